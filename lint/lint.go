@@ -26,15 +26,20 @@ func (n Need) String() string {
 	return "text"
 }
 
-// Scope says what a rule is asked about, one inquiry each.
+// Scope says what a rule is asked about, one inquiry each. A rule about data
+// may be asked twice, in the manifest that names them and in each request that
+// uses them: OfManifest | OfRequest.
 type Scope uint8
 
 // The scopes.
 const (
-	OfDocument Scope = iota + 1 // every document: its text and keys
-	OfManifest                  // a manifest and the data it names
-	OfRequest                   // one request of an analysis, on its data
+	OfDocument Scope = 1 << iota // every document: its text and keys
+	OfManifest                   // a manifest and the data it names
+	OfRequest                    // one request of an analysis, on its data
 )
+
+// Has reports whether the rule is asked about the other scope.
+func (s Scope) Has(other Scope) bool { return s&other != 0 }
 
 // Rule is one rule of the catalogue.
 type Rule struct {
@@ -46,8 +51,11 @@ type Rule struct {
 	Need     Need
 	// Mendable is whether a rewrite of the request can answer the rule.
 	Mendable bool
-	// Spoken is whether deviations may answer it; unreadable documents and
-	// data admit none.
+	// NoDeviation is set where no deviation may answer the rule: unreadable
+	// documents and data admit none.
 	NoDeviation bool
+	// Question is set where the rewrites that answer the rule change what is
+	// asked, so none is ever preferred.
+	Question bool
 	Run         func(*Inquiry)
 }
