@@ -2,13 +2,13 @@
 // that compute, screen, hover and reports show.
 package result
 
-// Bound says that a p-value is known only as a bound.
-type Bound string
+import "lagwise/lint/evidence"
 
-// The bounds; the empty Bound is an exact value.
-const (
-	AtMost  Bound = "at-most"
-	AtLeast Bound = "at-least"
+// Bound, Test and Critical are evidence's, shown as they are.
+type (
+	Bound    = evidence.Bound
+	Test     = evidence.Test
+	Critical = evidence.Critical
 )
 
 // Computed is what one request gives for one pair (or its regression).
@@ -90,26 +90,6 @@ type Check struct {
 	DF        []float64
 	P         *float64
 }
-
-// Test is one test of a screened series, with all that a reader needs to
-// repeat it.
-type Test struct {
-	Test      string
-	Null      string
-	Of        string // levels, first differences, …
-	Terms     string // none, constant, constant and trend
-	Lags      *int
-	Bandwidth *int
-	Statistic *float64
-	P         *float64
-	PBound    Bound
-	N         int
-	Critical  []Critical
-	Error     string
-}
-
-// Critical is one critical value.
-type Critical struct{ Level, Value float64 }
 
 // Screened is what is known of one series of a manifest.
 type Screened struct {

@@ -1,0 +1,31 @@
+package evidence
+
+// Bound says that a p-value is known only as a bound: the end of a published
+// table. The empty Bound is an exact value.
+type Bound string
+
+// The bounds.
+const (
+	AtMost  Bound = "at-most"
+	AtLeast Bound = "at-least"
+)
+
+// Test is one test with all that a reader needs to repeat it. Pointers are
+// nil where the test has no such number; Error says why it has none at all.
+type Test struct {
+	Test      string
+	Null      string
+	Of        string // levels, first differences, …
+	Terms     string // none, constant, constant and trend
+	Lags      *int
+	Bandwidth *int
+	Statistic *float64
+	P         *float64
+	PBound    Bound
+	N         int
+	Critical  []Critical
+	Error     string
+}
+
+// Critical is one critical value.
+type Critical struct{ Level, Value float64 }
