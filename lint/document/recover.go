@@ -1,0 +1,77 @@
+package document
+
+import "bytes"
+
+// recover tells a broken statement and returns where the next one begins.
+func (b *builder) recover(start int, err error) int {
+	at, message := b.errorAt(err)
+	sweep := &sweep{text: b.text, at: start, errorAt: at.Start, unclosed: -1}
+	next := b.resume(sweep)
+	whole := Span{start, b.trim(start, next)}
+	b.tree.Comments = append(b.tree.Comments, sweep.comments...)
+	if b.leftover(whole) {
+		b.open = false
+		return next
+	}
+	b.open = b.open || len(sweep.brackets) > 0
+	line := lineAt(b.text, start)
+	s := statement{at: whole, table: b.table, names: b.names, tables: b.tables, form: brokenPair}
+	if line[0] == '[' && bytes.IndexByte(line, ',') < 0 {
+		table := &Node{Kind: Table, At: whole, Header: whole}
+		b.enter(table, nil, []*Node{b.tree.Root, table})
+		s.table, s.names, s.tables, s.header, s.form = table, nil, b.tables, whole, brokenHeader
+	} else {
+		s.keys, _ = keysOf(b.text, start, start+len(line))
+	}
+	b.tree.statements = append(b.tree.statements, s)
+	p := b.describe(s, sweep, at, message)
+	b.problem(p.At, p.Message)
+	return next
+}
+
+// resume is where a statement begins after a broken one. What the parser has
+// read beyond it is read again; a budget on that keeps the whole linear, at
+// the price of a few statements when a text is built to exhaust it.
+func (b *builder) resume(s *sweep) int {
+	indent := s.at - lineStart(b.text, s.at)
+	header := b.text[s.at] == '['
+	for {
+		s.line(header)
+		if s.at >= len(b.text) {
+			return len(b.text)
+		}
+		if again := s.errorAt - s.at; again > 0 {
+			if b.reread+again > 4*len(b.text)+1<<16 {
+				continue
+			}
+			if s.begins(indent) {
+				b.reread += again
+				return s.at
+			}
+		} else if s.begins(indent) {
+			return s.at
+		}
+	}
+}
+
+// leftover reports whether all of a broken statement is the closing brackets
+// of an earlier one.
+func (b *builder) leftover(at Span) bool {
+	if !b.open {
+		return false
+	}
+	for _, c := range b.text[at.Start:at.End] {
+		if bytes.IndexByte([]byte("]}, \t\r\n"), c) < 0 {
+			return false
+		}
+	}
+	return true
+}
+
+// trim takes the line ends and blanks off the end of a broken statement.
+func (b *builder) trim(start, end int) int {
+	for end > start+1 && bytes.IndexByte(blank, b.text[end-1]) >= 0 {
+		end--
+	}
+	return end
+}
