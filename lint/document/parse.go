@@ -106,15 +106,20 @@ func (b *builder) enter(table *Node, names []string, tables []*Node) {
 	b.table, b.names, b.tables = table, names, tables
 }
 
-// skipBlank is the offset of the first byte that is neither blank nor a line end.
+// skipBlank is the offset of the first byte that is neither blank nor part of a
+// line end. A carriage return alone ends no line in TOML.
 func (b *builder) skipBlank(from int) int {
-	for from < len(b.text) && bytes.IndexByte(blank, b.text[from]) >= 0 {
+	for from < len(b.text) {
+		switch c := b.text[from]; {
+		case c == ' ' || c == '\t' || c == '\n':
+		case c == '\r' && from+1 < len(b.text) && b.text[from+1] == '\n':
+		default:
+			return from
+		}
 		from++
 	}
 	return from
 }
-
-var blank = []byte(" \t\r\n")
 
 // errorAt is where the parser stopped, and what it said.
 func (b *builder) errorAt(err error) (Span, string) {

@@ -1,6 +1,9 @@
 package document
 
-import "bytes"
+import (
+	"bytes"
+	"strings"
+)
 
 // recover tells a broken statement and returns where the next one begins.
 func (b *builder) recover(start int, err error) int {
@@ -61,7 +64,7 @@ func (b *builder) leftover(at Span) bool {
 		return false
 	}
 	for _, c := range b.text[at.Start:at.End] {
-		if bytes.IndexByte([]byte("]}, \t\r\n"), c) < 0 {
+		if strings.IndexByte("]}, \t\r\n", c) < 0 {
 			return false
 		}
 	}
@@ -70,7 +73,7 @@ func (b *builder) leftover(at Span) bool {
 
 // trim takes the line ends and blanks off the end of a broken statement.
 func (b *builder) trim(start, end int) int {
-	for end > start+1 && bytes.IndexByte(blank, b.text[end-1]) >= 0 {
+	for end > start+1 && strings.IndexByte(" \t\r\n", b.text[end-1]) >= 0 {
 		end--
 	}
 	return end

@@ -8,8 +8,9 @@ type sweep struct {
 	at       int
 	errorAt  int // where the parser stopped
 	brackets []int
-	curly    int // how many of the open brackets are curly
-	unclosed int // the first string without an end, or -1
+	curly    int  // how many of the open brackets are curly
+	unclosed int  // the first string without an end, or -1
+	long     bool // one of these is a multi-line string
 	comments []Span
 }
 
@@ -71,6 +72,7 @@ func (s *sweep) quoted(quote byte) {
 			s.at = end + 3
 			return
 		}
+		s.long = true
 	} else if end := closing(lineAt(s.text, start), 1, long[:1]); end >= 0 {
 		s.at = start + end + 1
 		return
@@ -108,19 +110,23 @@ func closing(text []byte, from int, quote []byte) int {
 }
 
 // begins reports whether a statement begins on the line at which the sweep is.
-// With all closed it does; inside of brackets, if the line could hardly stand
-// there: the indentation of the broken statement decides the rest.
+// With all closed it does; in a string that never ends, if it looks so; inside
+// of brackets, if the line could hardly stand there: the indentation of the
+// broken statement decides the rest.
 func (s *sweep) begins(indent int) bool {
-	if len(s.brackets) == 0 {
+	line := lineAt(s.text, s.at)
+	like, named := headerLike(line)
+	switch {
+	case s.long:
+		return like || pairLike(line)
+	case len(s.brackets) == 0:
 		return true
 	}
-	line := lineAt(s.text, s.at)
 	outside := len(line)-len(bytes.TrimLeft(line, " \t")) <= indent
 	if pairLike(line) {
 		inner := s.text[s.brackets[len(s.brackets)-1]]
 		return inner == '[' || outside && !bytes.HasSuffix(bytes.TrimRight(line, " \t\r"), []byte(","))
 	}
-	like, named := headerLike(line)
 	stopped := s.at <= s.errorAt && s.errorAt <= s.at+len(line)
 	return like && (named || outside && stopped)
 }
@@ -131,9 +137,9 @@ func lineStart(text []byte, at int) int { return bytes.LastIndexByte(text[:at], 
 func lineAt(text []byte, at int) []byte {
 	line := text[at:]
 	if i := bytes.IndexByte(line, '\n'); i >= 0 {
-		line = line[:i]
+		return bytes.TrimSuffix(line[:i], []byte("\r"))
 	}
-	return bytes.TrimSuffix(line, []byte("\r"))
+	return line
 }
 
 // pairLike reports whether a line begins as "key =".

@@ -10,7 +10,7 @@ import (
 	"github.com/pelletier/go-toml/v2/unstable"
 )
 
-var errLocal = errors.New("not a date or time of the calendar")
+var errNoDate = errors.New("not a date or time of the calendar")
 
 // scalar decodes a well-formed scalar. The error says only that the value does
 // not exist (a 13th month) or does not fit into 64 bits.
@@ -50,6 +50,10 @@ func float(raw string) (float64, error) {
 
 func offsetDateTime(raw string) (time.Time, error) {
 	text := upperTime(raw)
+	// Go takes offsets up to 24:60; RFC 3339 (2002) ends at 23:59.
+	if i := len(text) - len("+00:00"); text[len(text)-1] != 'Z' && (text[i+1:i+3] > "23" || text[i+4:] > "59") {
+		return time.Time{}, errNoDate
+	}
 	t, err := time.Parse(time.RFC3339Nano, text)
 	if err != nil {
 		t, err = time.Parse("2006-01-02T15:04Z07:00", text)
@@ -63,7 +67,7 @@ func local(raw string, layouts ...string) error {
 			return nil
 		}
 	}
-	return errLocal
+	return errNoDate
 }
 
 // upperTime writes the separators of a date and time as Go's layouts do.
