@@ -137,6 +137,8 @@ type Asked struct {
 	// Digest is over the fields that bear on the computing (not name,
 	// question, by, …): equal digests give equal evidence.
 	Digest [32]byte
+
+	madeUp bool // the name is not written
 }
 
 // Key returns the span of the value of a key when it is written, else of the
