@@ -25,6 +25,9 @@ func (b *builder) describe(s statement, sweep *sweep, at Span, message string) P
 		open := sweep.brackets[n-1]
 		return Problem{Span{open, open + 1}, fmt.Sprintf("this %c is not closed; add %c", b.text[open], b.text[open]+2)}
 	}
+	if words, word := b.bareWord(at.Start); words != "" {
+		return Problem{word, words}
+	}
 	if p, found := b.ask(s.at); found {
 		return Problem{b.within(p.At, s.at), p.Message}
 	}
@@ -67,6 +70,28 @@ func (b *builder) pairTrouble(s statement, line []byte) string {
 		return fmt.Sprintf("%s has no value; write one after the equals sign", key)
 	}
 	return ""
+}
+
+// bareWord words text without quotes where a value should stand.
+func (b *builder) bareWord(at int) (string, Span) {
+	before := bytes.TrimRight(b.text[:at], " \t\r\n")
+	if len(before) == 0 || bytes.IndexByte([]byte("=[,"), before[len(before)-1]) < 0 {
+		return "", Span{}
+	}
+	end := at
+	for end < len(b.text) && bareByte(b.text[end]) {
+		end++
+	}
+	word := string(b.text[at:end])
+	if word == "" || word[0] < 'A' {
+		return "", Span{}
+	}
+	advice := Quote(word)
+	switch lower := strings.ToLower(word); lower {
+	case "true", "false", "inf", "nan":
+		advice = lower
+	}
+	return fmt.Sprintf("%s is not a value; write %s", word, advice), Span{at, end}
 }
 
 // within keeps a place inside of a statement, and not empty.

@@ -137,10 +137,11 @@ func bomLength(text []byte) int {
 	return 0
 }
 
-// utf16 tells a text in UTF-16, in which nothing can be read.
+// utf16 tells a text in UTF-16, in which nothing can be read: by its mark, or by
+// the zero byte that comes with a first character of ASCII.
 func utf16(text []byte) (Problem, bool) {
 	marked := bytes.HasPrefix(text, []byte("\xff\xfe")) || bytes.HasPrefix(text, []byte("\xfe\xff"))
-	if !marked && bytes.IndexByte(text[:min(6, len(text))], 0) < 0 {
+	if !marked && bytes.IndexByte(text[:min(2, len(text))], 0) < 0 {
 		return Problem{}, false
 	}
 	return Problem{Span{0, min(2, len(text))},
