@@ -75,6 +75,7 @@ func (b *builder) header(e *unstable.Node, comment Span) int {
 		names[i] = k.Text
 	}
 	b.enter(table, names, tables)
+	b.open = false
 	b.tree.statements = append(b.tree.statements, statement{at: Span{at.Start, end}, table: table, names: names,
 		tables: tables, keys: keys, header: at, form: headerForm})
 	return end

@@ -36,10 +36,7 @@ func (b *builder) describe(s statement, sweep *sweep, at Span, message string) P
 
 // headerTrouble words a header that is half typed.
 func headerTrouble(line []byte) string {
-	brackets := 1
-	if len(line) > 1 && line[1] == '[' {
-		brackets = 2
-	}
+	brackets := openers(line)
 	keys, i := keysOf(line, brackets, len(line))
 	closers := strings.Repeat("]", brackets)
 	switch rest := bytes.TrimLeft(line[i:], "] \t"); {

@@ -25,7 +25,7 @@ type Path struct {
 	// In is the part under the offset.
 	In Part
 	// Keys is the key of the statement part by part, as far as it is written,
-	// or of the header; nil between statements.
+	// or of the header, broken or not; nil between statements.
 	Keys []Key
 	// Members runs from the statement's first key into the value, through
 	// inline tables, down to the offset. Nil on broken lines.
@@ -67,7 +67,7 @@ func (t *Tree) At(offset int) Path {
 	}
 	p.Keys, p.Statement, p.Broken = s.keys, s.at, s.form == brokenPair || s.form == brokenHeader
 	p.In = t.part(s, offset)
-	if s.value != nil && p.In == InValue {
+	if s.value != nil && s.value.At.Contains(offset) {
 		p.Value = s.value
 	}
 	if s.value != nil && !p.Broken {
@@ -77,9 +77,10 @@ func (t *Tree) At(offset int) Path {
 }
 
 // reaches reports whether an offset after a statement's start belongs to it. A
-// broken one takes what follows it on its last line.
+// broken one takes what follows it on its last line, and what its open brackets
+// take.
 func (t *Tree) reaches(s statement, offset int) bool {
-	if offset <= s.at.End {
+	if offset <= s.at.End || offset < s.until || s.until == len(t.Text) {
 		return true
 	}
 	return s.form == brokenPair && offset <= s.at.End+len(lineAt(t.Text, s.at.End))

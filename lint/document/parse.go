@@ -138,10 +138,11 @@ func bomLength(text []byte) int {
 }
 
 // utf16 tells a text in UTF-16, in which nothing can be read: by its mark, or by
-// the zero byte that comes with a first character of ASCII.
+// every other byte being zero, as in ASCII characters.
 func utf16(text []byte) (Problem, bool) {
 	marked := bytes.HasPrefix(text, []byte("\xff\xfe")) || bytes.HasPrefix(text, []byte("\xfe\xff"))
-	if !marked && bytes.IndexByte(text[:min(2, len(text))], 0) < 0 {
+	zeros := len(text) >= 4 && (text[0]|text[2] == 0 || text[1]|text[3] == 0)
+	if !marked && !zeros {
 		return Problem{}, false
 	}
 	return Problem{Span{0, min(2, len(text))},

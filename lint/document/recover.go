@@ -13,16 +13,18 @@ func (b *builder) recover(start int, err error) int {
 	whole := Span{start, b.trim(start, next)}
 	b.tree.Comments = append(b.tree.Comments, sweep.comments...)
 	if b.leftover(whole) {
-		b.open = false
 		return next
 	}
-	b.open = b.open || len(sweep.brackets) > 0
 	line := lineAt(b.text, start)
 	s := statement{at: whole, table: b.table, names: b.names, tables: b.tables, form: brokenPair}
+	if len(sweep.brackets) > 0 {
+		b.open, s.until = true, next
+	}
 	if line[0] == '[' && bytes.IndexByte(line, ',') < 0 {
 		table := &Node{Kind: Table, At: whole, Header: whole}
 		b.enter(table, nil, []*Node{b.tree.Root, table})
 		s.table, s.names, s.tables, s.header, s.form = table, nil, b.tables, whole, brokenHeader
+		s.keys, _ = keysOf(b.text, start+openers(line), start+len(line))
 	} else {
 		s.keys, _ = keysOf(b.text, start, start+len(line))
 	}
@@ -57,18 +59,20 @@ func (b *builder) resume(s *sweep) int {
 	}
 }
 
-// leftover reports whether all of a broken statement is the closing brackets
-// of an earlier one.
+// leftover reports whether a broken statement is no more than the rest of an
+// earlier one that left brackets open: items, or the closing brackets, which
+// end that.
 func (b *builder) leftover(at Span) bool {
-	if !b.open {
+	line := bytes.Trim(lineAt(b.text, at.Start), " \t\r")
+	if !b.open || pairLike(line) || bytes.HasPrefix(line, []byte("[[")) {
 		return false
 	}
-	for _, c := range b.text[at.Start:at.End] {
-		if strings.IndexByte("]}, \t\r\n", c) < 0 {
-			return false
-		}
+	if len(bytes.Trim(line, "]}, ")) == 0 {
+		b.open = false
+		return true
 	}
-	return true
+	first, last := line[0], line[len(line)-1]
+	return first == '"' || first == '\'' || first == '{' || last == ','
 }
 
 // trim takes the line ends and blanks off the end of a broken statement.

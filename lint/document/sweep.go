@@ -111,8 +111,7 @@ func closing(text []byte, from int, quote []byte) int {
 
 // begins reports whether a statement begins on the line at which the sweep is.
 // With all closed it does; in a string that never ends, if it looks so; inside
-// of brackets, if the line could hardly stand there: the indentation of the
-// broken statement decides the rest.
+// of brackets, if the line could hardly stand there.
 func (s *sweep) begins(indent int) bool {
 	line := lineAt(s.text, s.at)
 	like, named := headerLike(line)
@@ -121,14 +120,22 @@ func (s *sweep) begins(indent int) bool {
 		return like || pairLike(line)
 	case len(s.brackets) == 0:
 		return true
+	case pairLike(line):
+		return s.text[s.brackets[len(s.brackets)-1]] == '[' || !s.memberLike(line)
 	}
 	outside := len(line)-len(bytes.TrimLeft(line, " \t")) <= indent
-	if pairLike(line) {
-		inner := s.text[s.brackets[len(s.brackets)-1]]
-		return inner == '[' || outside && !bytes.HasSuffix(bytes.TrimRight(line, " \t\r"), []byte(","))
-	}
 	stopped := s.at <= s.errorAt && s.errorAt <= s.at+len(line)
 	return like && (named || outside && stopped)
+}
+
+// memberLike reports whether a line "key = value" reads as a member of an
+// inline table: a comma ends it, or a brace begins the next line.
+func (s *sweep) memberLike(line []byte) bool {
+	next := bytes.TrimLeft(s.text[s.at+len(line):], " \t\r\n")
+	if i := bytes.LastIndexByte(line, '#'); i >= 0 && bytes.IndexAny(line[i:], `"'`) < 0 {
+		line = line[:i]
+	}
+	return bytes.HasSuffix(bytes.TrimRight(line, " \t"), []byte(",")) || bytes.HasPrefix(next, []byte("}"))
 }
 
 func lineStart(text []byte, at int) int { return bytes.LastIndexByte(text[:at], '\n') + 1 }
@@ -155,11 +162,7 @@ func headerLike(line []byte) (like, named bool) {
 	if len(line) == 0 || line[0] != '[' {
 		return false, false
 	}
-	i := 1
-	if len(line) > 1 && line[1] == '[' {
-		i = 2
-	}
-	keys, i := keysOf(line, i, len(line))
+	keys, i := keysOf(line, openers(line), len(line))
 	for n := 0; n < 2 && i < len(line) && line[i] == ']'; n++ {
 		i++
 	}
@@ -174,6 +177,14 @@ func headerLike(line []byte) (like, named bool) {
 		named = named || word
 	}
 	return len(rest) == 0 || rest[0] == '#', named
+}
+
+// openers is the number of brackets with which a header opens.
+func openers(line []byte) int {
+	if bytes.HasPrefix(line, []byte("[[")) {
+		return 2
+	}
+	return 1
 }
 
 // keysOf reads the parts of a dotted key as far as they go, and returns them

@@ -149,6 +149,7 @@ type statement struct {
 	header Span    // empty for anything but headers
 	tables []*Node // from the root to table
 	form   form
+	until  int // of one with open brackets: where the next statement begins
 }
 
 type form uint8
