@@ -1,0 +1,151 @@
+package engine
+
+import (
+	"context"
+	"slices"
+	"strconv"
+
+	"lagwise/lint"
+	"lagwise/lint/document"
+	"lagwise/lint/evidence"
+	"lagwise/lint/finding"
+	"lagwise/lint/request"
+)
+
+// asking is the judgement of one request.
+type asking struct {
+	*reading
+	bound
+	c        *evidence.Case // nil: the request is not computable as it stands
+	why      string         // it is not
+	key      key            // of what was said of the same text before
+	said                    // weighed, and answered by deviations
+	rewrites []finding.Rewrite
+	proofs   []*proof
+	complete bool
+}
+
+// asking prepares the judgement of one request. A request with an error in
+// its own text, or with a series that is not found, is not computed: the
+// error is told, and nothing that would follow from it.
+func (h *hearing) asking(ctx context.Context, i int, d depth) *asking {
+	a := &asking{reading: h.reading, bound: h.reading.requests[i], complete: true}
+	for _, f := range h.document.findings {
+		if a.why == "" && f.Severity == finding.Error && f.Rule != failedRule && a.concerns(f) {
+			a.why = f.Message
+		}
+	}
+	if !a.ready {
+		a.complete = d != textOnly || h.whole
+		return a
+	}
+	if a.why == "" {
+		a.c = a.newCase(ctx)
+	}
+	return a
+}
+
+func (a *asking) newCase(ctx context.Context) *evidence.Case {
+	return a.ed.engine.store.Case(ctx, evidence.Bound{Asked: a.asked, Series: a.series,
+		Roots: a.ed.guard(a.file.root), Settings: a.lab.settings})
+}
+
+// concerns reports whether a finding of the document lies in the text of the
+// request, its deviations apart.
+func (a *asking) concerns(f finding.Finding) bool {
+	if f.At.Empty() || !inside(a.asked.At, f.At) {
+		return f.Request != "" && f.Request == a.asked.Name && f.File == a.file.file
+	}
+	return !slices.ContainsFunc(a.deviationSpans(), func(d document.Span) bool { return inside(d, f.At) })
+}
+
+func (a *asking) deviationSpans() []document.Span {
+	var all []document.Span
+	for _, d := range a.asked.Deviations {
+		all = append(all, d.At)
+	}
+	return all
+}
+
+// spoken is what was said of one text, with the places it had then.
+type spoken struct {
+	said
+	start int // where the request began
+}
+
+// hear asks the rules about the request, or remembers what they said of the
+// same text.
+func (a *asking) hear(ctx context.Context, d depth) {
+	if a.c == nil {
+		return
+	}
+	a.key = a.textKey()
+	if d == textOnly {
+		before, known := a.ed.engine.spoken.get(a.key)
+		a.complete = known
+		a.said = before.moved(a.file.file, a.asked.At.Start)
+		a.weigh(a.findings)
+		return
+	}
+	a.said = a.ask(ctx, lint.OfRequest, a.inquiryOf(a.asked.Request, a.c), nil)
+	if ctx.Err() == nil {
+		a.ed.engine.spoken.put(a.key, spoken{a.clone(), a.asked.At.Start})
+	}
+	a.weigh(a.findings)
+}
+
+func (s said) clone() said {
+	return said{findings: slices.Clone(s.findings), broken: slices.Clone(s.broken)}
+}
+
+// weigh gives every finding its weight and lets deviations answer.
+func (r *reading) weigh(findings []finding.Finding) {
+	for i := range findings {
+		f := &findings[i]
+		f.Severity = weighted(r.lab.merged, f.Rule, f.Severity)
+		r.answer(f)
+	}
+}
+
+// textKey digests the text of the request and all documents that bear on it.
+func (a *asking) textKey() key {
+	at := a.asked.At
+	parts := []string{"request", a.file.file, a.asked.Name, strconv.Itoa(a.asked.Index), string(a.file.text[at.Start:at.End]), a.lab.digest}
+	for _, src := range a.sources {
+		parts = append(parts, src.file.path, string(src.file.text))
+	}
+	return digest(parts...)
+}
+
+// inquiryOf is what the rules of request scope are given about the request as
+// written, or about a candidate in its place.
+func (a *asking) inquiryOf(r request.Request, c *evidence.Case) lint.Inquiry {
+	asked := *a.asked
+	asked.Request = r
+	q := a.inquiry()
+	q.Request, q.Case = &asked, c
+	return q
+}
+
+// moved returns what was said, with the places of the file shifted to where
+// the request begins now. The text of the request is the same, so every place
+// in it keeps its distance from its beginning.
+func (s spoken) moved(file string, start int) said {
+	by := start - s.start
+	shift := func(f string, at document.Span) document.Span {
+		if f != file {
+			return at
+		}
+		return document.Span{Start: at.Start + by, End: at.End + by}
+	}
+	out := s.clone()
+	for i := range out.findings {
+		f := &out.findings[i]
+		f.At = shift(f.File, f.At)
+		f.Related = slices.Clone(f.Related)
+		for k := range f.Related {
+			f.Related[k].At = shift(f.Related[k].File, f.Related[k].At)
+		}
+	}
+	return out
+}

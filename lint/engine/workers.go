@@ -1,0 +1,34 @@
+package engine
+
+import (
+	"context"
+	"sync"
+)
+
+// each runs work for 0 to n-1 on the engine's workers and returns when all
+// are done, or the context's error; what has not begun by then is left out.
+// Work must not call each: it holds a slot.
+func (e *Engine) each(ctx context.Context, n int, work func(i int)) error {
+	var group sync.WaitGroup
+	next := make(chan int)
+	for range min(n, e.options.Workers) {
+		group.Go(func() {
+			for i := range next {
+				e.slots <- struct{}{}
+				if ctx.Err() == nil {
+					work(i)
+				}
+				<-e.slots
+			}
+		})
+	}
+	for i := 0; i < n && ctx.Err() == nil; i++ {
+		select {
+		case next <- i:
+		case <-ctx.Done():
+		}
+	}
+	close(next)
+	group.Wait()
+	return ctx.Err()
+}
