@@ -46,6 +46,7 @@ func (b *builder) define(table *Node, keys []Key, value *Node, at, comment Span)
 			return
 		}
 		table = m.Value
+		table.last = max(at.End, comment.End)
 	}
 	k := keys[len(keys)-1]
 	if m := table.Get(k.Text); m != nil {
@@ -53,7 +54,6 @@ func (b *builder) define(table *Node, keys []Key, value *Node, at, comment Span)
 		return
 	}
 	table.add(&Member{Key: k, Value: value, Statement: at, Comment: comment})
-	table.last = max(at.End, comment.End)
 }
 
 // header opens the table of [t] or [[t]] and returns the end of its line.

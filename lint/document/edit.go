@@ -1,7 +1,6 @@
 package document
 
 import (
-	"bytes"
 	"fmt"
 	"strings"
 )
@@ -62,21 +61,9 @@ func (t *Tree) Remove(table *Node, key string) []Edit {
 	case table.origin == byDottedInside:
 		return nil
 	case table.Kind == InlineTable:
-		return []Edit{{At: t.inlineGap(table, m)}}
+		return t.removeInline(m)
 	}
-	start := lineStart(t.Text, m.Statement.Start)
-	end := max(m.Statement.End, m.Comment.End)
-	if !bytes.Equal(bytes.Trim(t.Text[start:m.Statement.Start], " \t"), nil) {
-		start = m.Statement.Start // after a byte order mark
-	}
-	end += len(lineAt(t.Text, end))
-	if end < len(t.Text) && t.Text[end] == '\r' {
-		end++
-	}
-	if end < len(t.Text) && t.Text[end] == '\n' {
-		end++
-	}
-	return []Edit{{At: Span{start, end}}}
+	return []Edit{{At: t.wholeLine(Span{m.Statement.Start, max(m.Statement.End, m.Comment.End)})}}
 }
 
 // Quote writes a TOML basic string.

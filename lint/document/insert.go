@@ -62,19 +62,3 @@ func (t *Tree) insertInline(table *Node, pair string) Edit {
 	}
 	return Edit{At: Span{table.At.Start + 1, table.At.End - 1}, Text: " " + pair + " "}
 }
-
-// inlineGap is a member of an inline table with one of its commas.
-func (t *Tree) inlineGap(table *Node, m *Member) Span {
-	gap := m.Statement
-	for i, other := range table.Members {
-		if other != m {
-			continue
-		}
-		if i+1 < len(table.Members) {
-			gap.End = table.Members[i+1].Statement.Start
-		} else if i > 0 {
-			gap.Start = table.Members[i-1].Statement.End
-		}
-	}
-	return gap
-}

@@ -107,8 +107,7 @@ func (t *Tree) part(s statement, offset int) Part {
 }
 
 func (t *Tree) blankOrComment(offset int) Part {
-	i := sort.Search(len(t.Comments), func(i int) bool { return t.Comments[i].Start >= offset }) - 1
-	if i >= 0 && offset <= t.Comments[i].End {
+	if n := t.commentsUpTo(offset); n > 0 && offset <= t.Comments[n-1].End {
 		return InComment
 	}
 	return InBlank
