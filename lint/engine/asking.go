@@ -2,8 +2,8 @@ package engine
 
 import (
 	"context"
+	"encoding/hex"
 	"slices"
-	"strconv"
 
 	"lagwise/lint"
 	"lagwise/lint/document"
@@ -18,7 +18,7 @@ type asking struct {
 	bound
 	c        *evidence.Case // nil: the request is not computable as it stands
 	why      string         // it is not
-	key      key            // of what was said of the same text before
+	own      []*deviation   // of this request
 	said                    // weighed, and answered by deviations
 	rewrites []finding.Rewrite
 	proofs   []*proof
@@ -30,6 +30,11 @@ type asking struct {
 // error is told, and nothing that would follow from it.
 func (h *hearing) asking(ctx context.Context, i int, d depth) *asking {
 	a := &asking{reading: h.reading, bound: h.reading.requests[i], complete: true}
+	for _, d := range h.devs {
+		if d.index == i {
+			a.own = append(a.own, d)
+		}
+	}
 	for _, f := range h.document.findings {
 		if a.why == "" && f.Severity == finding.Error && f.Rule != failedRule && a.concerns(f) {
 			a.why = f.Message
@@ -70,28 +75,52 @@ func (a *asking) deviationSpans() []document.Span {
 // spoken is what was said of one text, with the places it had then.
 type spoken struct {
 	said
-	start int // where the request began
+	start   int      // where the request began
+	changed []string // data of deviations that have changed
 }
 
-// hear asks the rules about the request, or remembers what they said of the
-// same text.
-func (a *asking) hear(ctx context.Context, d depth) {
+// recall says what was said of the same text before.
+func (a *asking) recall() {
 	if a.c == nil {
 		return
 	}
-	a.key = a.textKey()
-	if d == textOnly {
-		before, known := a.ed.engine.spoken.get(a.key)
-		a.complete = known
-		a.said = before.moved(a.file.file, a.asked.At.Start)
-		a.weigh(a.findings)
+	before, known := a.ed.engine.spoken.get(a.textKey())
+	a.complete = known
+	a.said = before.moved(a.file.file, a.asked.At.Start)
+	for _, d := range a.own {
+		d.changed = slices.Contains(before.changed, d.Data)
+	}
+	a.weigh(a.findings, a.own)
+}
+
+// hear asks the rules about the request.
+func (a *asking) hear(ctx context.Context) {
+	if a.c == nil {
 		return
 	}
 	a.said = a.ask(ctx, lint.OfRequest, a.inquiryOf(a.asked.Request, a.c), nil)
+	changed := a.compareData()
 	if ctx.Err() == nil {
-		a.ed.engine.spoken.put(a.key, spoken{a.clone(), a.asked.At.Start})
+		a.ed.engine.spoken.put(a.textKey(), spoken{a.clone(), a.asked.At.Start, changed})
 	}
-	a.weigh(a.findings)
+	a.weigh(a.findings, a.own)
+}
+
+// compareData marks the deviations that were given for other data, and
+// returns the digests that no longer hold.
+func (a *asking) compareData() []string {
+	var changed []string
+	for _, d := range a.own {
+		if d.Data == "" {
+			continue
+		}
+		frame, err := a.c.Used()
+		if err == nil && d.Data != "sha256:"+hex.EncodeToString(frame.Digest[:]) {
+			d.changed = true
+			changed = append(changed, d.Data)
+		}
+	}
+	return changed
 }
 
 func (s said) clone() said {
@@ -99,22 +128,18 @@ func (s said) clone() said {
 }
 
 // weigh gives every finding its weight and lets deviations answer.
-func (r *reading) weigh(findings []finding.Finding) {
+func (r *reading) weigh(findings []finding.Finding, devs []*deviation) {
 	for i := range findings {
 		f := &findings[i]
 		f.Severity = weighted(r.lab.merged, f.Rule, f.Severity)
-		r.answer(f)
+		r.answer(f, devs)
 	}
 }
 
 // textKey digests the text of the request and all documents that bear on it.
 func (a *asking) textKey() key {
 	at := a.asked.At
-	parts := []string{"request", a.file.file, a.asked.Name, strconv.Itoa(a.asked.Index), string(a.file.text[at.Start:at.End]), a.lab.digest}
-	for _, src := range a.sources {
-		parts = append(parts, src.file.path, string(src.file.text))
-	}
-	return digest(parts...)
+	return digest("request", a.file.path, a.asked.Name, string(a.file.text[at.Start:at.End]), a.around)
 }
 
 // inquiryOf is what the rules of request scope are given about the request as

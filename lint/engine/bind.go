@@ -17,31 +17,53 @@ type bound struct {
 	ready  bool                   // every series was found, in one place
 }
 
-// binder finds series by the names that requests write.
+// binder finds series by the names that requests write: plain, or
+// manifest:series.
 type binder struct {
-	sources []source
-	whole   bool // every manifest is there, and all its series are known
+	places map[string][]evidence.BoundSeries
+	names  []string // every name that finds exactly one series, plain where it can be
+	whole  bool     // every manifest is there, and all its series are known
 }
 
-func newBinder(sources []source, missing bool) binder {
-	b := binder{sources: sources, whole: !missing}
-	for _, s := range sources {
-		b.whole = b.whole && s.whole
+func newBinder(sources []source, missing bool) *binder {
+	b := &binder{places: map[string][]evidence.BoundSeries{}, whole: !missing}
+	for _, src := range sources {
+		b.whole = b.whole && src.whole
+		for _, s := range src.series {
+			place := evidence.BoundSeries{Manifest: src.manifest, Folder: src.folder(), Record: recordOf(src.manifest, s), Series: s}
+			b.places[s.Name] = append(b.places[s.Name], place)
+			b.places[qualified(place)] = append(b.places[qualified(place)], place)
+		}
+	}
+	for _, src := range sources {
+		for _, s := range src.series {
+			name := s.Name
+			if len(b.places[name]) > 1 {
+				name = src.manifest.Name + ":" + s.Name
+			}
+			if len(b.places[name]) == 1 {
+				b.names = append(b.names, name)
+			}
+		}
 	}
 	return b
 }
 
+func qualified(b evidence.BoundSeries) string { return b.Manifest.Name + ":" + b.Series.Name }
+
 // bind finds every series of a request. A name that is not found is told only
 // when all manifests could be read: what follows from a missing one is not
 // said again.
-func (b binder) bind(asked *request.Asked) (bound, []request.Problem) {
+func (b *binder) bind(asked *request.Asked) (bound, []request.Problem) {
 	got := bound{asked: asked, ready: true}
 	var problems []request.Problem
 	for _, name := range asked.Series() {
-		found := b.find(name)
+		found := b.places[name]
 		switch {
 		case len(found) == 1 && found[0].Record != nil:
-			got.series = append(got.series, found[0])
+			place := found[0]
+			place.Name = name
+			got.series = append(got.series, place)
 			continue
 		case len(found) == 0 && b.whole:
 			problems = append(problems, b.unknown(asked, name)...)
@@ -51,31 +73,6 @@ func (b binder) bind(asked *request.Asked) (bound, []request.Problem) {
 		got.ready = false
 	}
 	return got, problems
-}
-
-// find returns every place where a series of that name is declared.
-func (b binder) find(name string) []evidence.BoundSeries {
-	found := b.named("", name, name)
-	if manifest, series, qualified := strings.Cut(name, ":"); len(found) == 0 && qualified {
-		found = b.named(manifest, series, name)
-	}
-	return found
-}
-
-func (b binder) named(manifest, series, written string) []evidence.BoundSeries {
-	var found []evidence.BoundSeries
-	for _, src := range b.sources {
-		if manifest != "" && src.manifest.Name != manifest {
-			continue
-		}
-		for _, s := range src.series {
-			if s.Name == series {
-				found = append(found, evidence.BoundSeries{Name: written, Manifest: src.manifest,
-					Folder: src.folder(), Record: recordOf(src.manifest, s), Series: s})
-			}
-		}
-	}
-	return found
 }
 
 // recordOf returns the record of a series: the one it names, else the only
@@ -94,8 +91,8 @@ func recordOf(m *request.Manifest, s *request.Series) *request.Record {
 	return m.Records[i]
 }
 
-func (b binder) unknown(asked *request.Asked, name string) []request.Problem {
-	near := request.Nearest(name, b.names())
+func (b *binder) unknown(asked *request.Asked, name string) []request.Problem {
+	near := request.Nearest(name, b.names)
 	message := fmt.Sprintf("No manifest has a series %q.", name)
 	if near != "" {
 		message += fmt.Sprintf(" The nearest is %q.", near)
@@ -111,25 +108,10 @@ func (b binder) unknown(asked *request.Asked, name string) []request.Problem {
 	})
 }
 
-// names returns every name that would find exactly one series.
-func (b binder) names() []string {
-	var all []string
-	for _, src := range b.sources {
-		for _, s := range src.series {
-			if len(b.find(s.Name)) == 1 {
-				all = append(all, s.Name)
-			} else if long := src.manifest.Name + ":" + s.Name; len(b.find(long)) == 1 {
-				all = append(all, long)
-			}
-		}
-	}
-	return all
-}
-
 // listed says which series there are, as far as a sentence holds them.
-func (b binder) listed() string {
+func (b *binder) listed() string {
 	const most = 8
-	names := b.names()
+	names := b.names
 	switch {
 	case len(names) == 0:
 		return "The manifests hold no series."
@@ -139,15 +121,15 @@ func (b binder) listed() string {
 	return fmt.Sprintf("There are %s.", strings.Join(names, ", "))
 }
 
-func (b binder) ambiguous(asked *request.Asked, name string, found []evidence.BoundSeries) []request.Problem {
+func (b *binder) ambiguous(asked *request.Asked, name string, found []evidence.BoundSeries) []request.Problem {
 	var long []string
 	var related []request.RelatedPlace
 	for _, f := range found {
-		long = append(long, fmt.Sprintf("%q", f.Manifest.Name+":"+f.Series.Name))
+		long = append(long, fmt.Sprintf("%q", qualified(f)))
 		related = append(related, request.RelatedPlace{File: f.Manifest.File, At: f.Series.Header, Message: "one series of that name"})
 	}
 	message := fmt.Sprintf("%q names %d series. Write %s.", name, len(found), strings.Join(long, " or "))
-	if slices.Compact(slices.Sorted(slices.Values(long)))[0] == long[len(long)-1] {
+	if len(b.places[qualified(found[0])]) > 1 {
 		message = fmt.Sprintf("%q names %d series of manifests with the same name. Rename one of the manifests, or list only one in `manifests`.", name, len(found))
 	}
 	return atNames(asked, name, func(at document.Span) request.Problem {

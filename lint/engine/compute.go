@@ -2,6 +2,7 @@ package engine
 
 import (
 	"context"
+	"fmt"
 	"slices"
 
 	"lagwise/lint/evidence"
@@ -32,7 +33,10 @@ func (ed *Edition) Explain(ctx context.Context, path string, index int) (*result
 	if p != nil {
 		leaves = p.leaves
 	}
-	e, err := result.Explain(a.c, better, leaves)
+	var e *result.Explanation
+	if cause := shielded(func() { e, err = result.Explain(a.c, better, leaves) }); cause != nil {
+		return nil, a.brokeDown(cause)
+	}
 	if err != nil {
 		return nil, err
 	}
@@ -72,11 +76,19 @@ func (a *asking) compute() ([]result.Computed, error) {
 		return a.notComputed(), nil
 	}
 	better, p := a.recommended()
-	all, err := result.Compare(a.c, better)
+	var all []result.Computed
+	var err error
+	if cause := shielded(func() { all, err = result.Compare(a.c, better) }); cause != nil {
+		return nil, a.brokeDown(cause)
+	}
 	for i := range all {
 		a.settle(&all[i], p)
 	}
 	return all, err
+}
+
+func (a *asking) brokeDown(cause any) error {
+	return fmt.Errorf("computing %s in %s broke down: %v; please report it with the documents", a.asked.Name, a.file.file, cause)
 }
 
 // settle takes the recommendation away where something asks for a rewrite and

@@ -11,45 +11,75 @@ import (
 	"lagwise/lint/request"
 )
 
+// The rules about deviations.
+const (
+	idleDeviation       = "idle-deviation"
+	incompleteDeviation = "incomplete-deviation"
+	endedDeviation      = "ended-deviation"
+	endingDeviation     = "ending-deviation"
+)
+
 // endingDays is how long ahead the end of a deviation is told.
 const endingDays = 30
 
 // deviation is one documented deviation and what it may answer.
 type deviation struct {
 	*request.Deviation
-	request string // name of the request it stands in, or empty
-	series  string // of a manifest
-	record  string // of a manifest
+	request string        // name of the request it stands in, or empty
+	index   int           // of that request; -1 in a manifest
+	series  []string      // of a manifest: the series it is about
+	area    document.Span // of a manifest: the table that it stands under
+	changed bool          // the data that it was given for have changed
 }
 
 // deviations lists the deviations of a document in their order.
-func (r *reading) deviations() []deviation {
-	var all []deviation
-	switch r.file.kind {
+func (s *snapshot) deviations() []*deviation {
+	var all []*deviation
+	switch s.kind {
 	case request.AnalysisDoc:
-		for _, asked := range r.file.analysis().Requests {
-			for i := range asked.Deviations {
-				all = append(all, deviation{Deviation: &asked.Deviations[i], request: asked.Name})
+		for i, asked := range s.analysis().Requests {
+			for k := range asked.Deviations {
+				all = append(all, &deviation{Deviation: &asked.Deviations[k], request: asked.Name, index: i})
 			}
 		}
 	case request.ManifestDoc:
-		m := r.file.manifest()
-		for _, s := range m.Series {
-			for i := range s.Deviations {
-				all = append(all, deviation{Deviation: &s.Deviations[i], series: s.Name})
+		m := s.manifest().Manifest
+		for _, series := range m.Series {
+			for k := range series.Deviations {
+				all = append(all, &deviation{Deviation: &series.Deviations[k], index: -1,
+					series: []string{series.Name}, area: area(series.Header, series.Keys)})
 			}
 		}
 		for _, rec := range m.Records {
-			for i := range rec.Deviations {
-				all = append(all, deviation{Deviation: &rec.Deviations[i], record: rec.Name})
+			for k := range rec.Deviations {
+				all = append(all, &deviation{Deviation: &rec.Deviations[k], index: -1,
+					series: seriesOf(m, rec), area: area(rec.Header, rec.Keys)})
 			}
 		}
 	}
 	return all
 }
 
+// area is a table from its header to its last statement.
+func area(header document.Span, keys map[string]request.Place) document.Span {
+	for _, k := range keys {
+		header.End = max(header.End, k.Statement.End)
+	}
+	return header
+}
+
+func seriesOf(m *request.Manifest, rec *request.Record) []string {
+	var all []string
+	for _, s := range m.Series {
+		if recordOf(m, s) == rec {
+			all = append(all, s.Name)
+		}
+	}
+	return all
+}
+
 // deviationProblems is what the text and the day say against a deviation.
-func (r *reading) deviationProblems(d deviation) []request.Problem {
+func (r *reading) deviationProblems(d *deviation) []request.Problem {
 	tell := func(rule, message string) []request.Problem {
 		return []request.Problem{{Rule: rule, At: d.place("from"), Message: message, Request: d.request}}
 	}
@@ -63,27 +93,27 @@ func (r *reading) deviationProblems(d deviation) []request.Problem {
 		p.Request = d.request
 		return []request.Problem{p}
 	case rule.NoDeviation:
-		return tell("idle-deviation", fmt.Sprintf("%s admits no deviation, so this one answers nothing. Take it out.", d.From))
+		return tell(idleDeviation, fmt.Sprintf("%s admits no deviation, so this one answers nothing. Take it out.", d.From))
 	case len(absent) > 0:
-		return tell("incomplete-deviation", fmt.Sprintf("This deviation takes no effect: the lab asks for %s as well.", strings.Join(absent, ", ")))
+		return tell(incompleteDeviation, fmt.Sprintf("This deviation takes no effect: the lab asks for %s as well.", strings.Join(absent, ", ")))
 	case r.ended(d):
-		return tell("ended-deviation", fmt.Sprintf("This deviation ended on %s. Renew it with a reason, or answer the finding.", d.Until))
+		return tell(endedDeviation, fmt.Sprintf("This deviation ended on %s. Renew it with a reason, or answer the finding.", d.Until))
 	case r.tooLong(d):
-		return tell("incomplete-deviation", fmt.Sprintf("This deviation takes no effect: the lab admits none beyond %s from now. Give an earlier `until`.", r.lab.merged.AskedFor.DeviationLongest))
+		return tell(incompleteDeviation, fmt.Sprintf("This deviation takes no effect: the lab admits none beyond %s from now. Give an earlier `until`.", r.lab.merged.AskedFor.DeviationLongest))
 	case r.endsSoon(d):
-		return tell("ending-deviation", fmt.Sprintf("This deviation ends on %s.", d.Until))
+		return tell(endingDeviation, fmt.Sprintf("This deviation ends on %s.", d.Until))
 	}
 	return nil
 }
 
 // takesEffect reports whether a deviation answers findings at all.
-func (r *reading) takesEffect(d deviation) bool {
+func (r *reading) takesEffect(d *deviation) bool {
 	rule := r.ed.engine.byName[d.From]
-	return rule != nil && !rule.NoDeviation && d.Reason != "" && len(r.absent(d)) == 0 && !r.ended(d) && !r.tooLong(d)
+	return rule != nil && !rule.NoDeviation && d.Reason != "" && len(r.absent(d)) == 0 && !d.changed && !r.ended(d) && !r.tooLong(d)
 }
 
 // absent lists what the lab asks of a deviation and this one does not have.
-func (r *reading) absent(d deviation) []string {
+func (r *reading) absent(d *deviation) []string {
 	has := map[string]string{"from": d.From, "reason": d.Reason, "by": d.By, "accepted-by": d.AcceptedBy, "until": d.Until, "data": d.Data}
 	var absent []string
 	for _, field := range r.lab.merged.AskedFor.Deviation {
@@ -99,7 +129,7 @@ func (r *reading) absent(d deviation) []string {
 
 // ended reports whether the last day of a deviation has passed. A day that
 // cannot be read vouches for nothing.
-func (r *reading) ended(d deviation) bool {
+func (r *reading) ended(d *deviation) bool {
 	if d.Until == "" || r.ed.engine.options.OnDate == "" {
 		return false
 	}
@@ -107,12 +137,12 @@ func (r *reading) ended(d deviation) bool {
 	return !ok || today.After(until)
 }
 
-func (r *reading) endsSoon(d deviation) bool {
+func (r *reading) endsSoon(d *deviation) bool {
 	until, today, ok := r.days(d)
 	return ok && !until.After(today.AddDate(0, 0, endingDays))
 }
 
-func (r *reading) tooLong(d deviation) bool {
+func (r *reading) tooLong(d *deviation) bool {
 	longest, err := request.ParsePeriod(r.lab.merged.AskedFor.DeviationLongest)
 	until, today, ok := r.days(d)
 	if err != nil || !ok {
@@ -121,36 +151,50 @@ func (r *reading) tooLong(d deviation) bool {
 	return until.After(today.AddDate(0, longest.Months, longest.Days).Add(time.Duration(longest.Seconds * float64(time.Second))))
 }
 
-func (r *reading) days(d deviation) (until, today time.Time, ok bool) {
+func (r *reading) days(d *deviation) (until, today time.Time, ok bool) {
 	until, err := time.Parse(time.DateOnly, d.Until)
 	today, wrong := time.Parse(time.DateOnly, r.ed.engine.options.OnDate)
 	return until, today, err == nil && wrong == nil
 }
 
 // place is where a key of a deviation stands, else the deviation.
-func (d deviation) place(key string) document.Span {
+func (d *deviation) place(key string) document.Span {
 	if p, ok := d.Keys[key]; ok {
 		return p.Value
 	}
 	return d.At
 }
 
-// answers reports whether a deviation that takes effect speaks of a finding.
-// One that is narrowed to a pair answers a finding about that pair alone: what
-// is said of further pairs still stands.
-func (d deviation) answers(f *finding.Finding) bool {
+// answer lets the first deviation that takes effect and speaks of a finding
+// answer it.
+func (r *reading) answer(f *finding.Finding, devs []*deviation) {
+	for _, d := range devs {
+		if d.speaksOf(f) && r.takesEffect(d) {
+			f.Deviation = d.Deviation
+			return
+		}
+	}
+}
+
+// speaksOf reports whether a deviation is about a finding. One that is
+// narrowed to a pair is about a finding of that pair alone: what is said of
+// further pairs still stands.
+func (d *deviation) speaksOf(f *finding.Finding) bool {
 	if d.From != f.Rule || d.request != f.Request {
 		return false
 	}
-	if d.series != "" && !slices.Contains(f.Series, d.series) {
-		return false
+	if d.index < 0 {
+		return inside(d.area, f.At) || slices.ContainsFunc(f.Series, func(s string) bool { return slices.Contains(d.series, s) })
+	}
+	if len(d.Pair) == 0 {
+		return true
 	}
 	for _, p := range f.Pairs {
-		if len(d.Pair) > 0 && !samePair(d.Pair, p) {
+		if !samePair(d.Pair, p) {
 			return false
 		}
 	}
-	return len(d.Pair) == 0 || len(f.Pairs) > 0
+	return len(f.Pairs) > 0
 }
 
 func samePair(a []string, b [2]string) bool {

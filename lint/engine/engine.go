@@ -6,7 +6,9 @@ import (
 	"lagwise/lint"
 	"lagwise/lint/dataset"
 	"lagwise/lint/evidence"
+	"lagwise/lint/procedure"
 	"lagwise/lint/request"
+	"lagwise/lint/result"
 )
 
 // evidenceBytes bounds the evidence that is remembered.
@@ -32,6 +34,12 @@ type Engine struct {
 	data    *dataset.Store
 	store   *evidence.Store
 	slots   chan struct{} // one for each inquiry that may run at a time
+
+	// What the procedure proposes and what a request gives; tests put their
+	// own in the place.
+	candidates func(*evidence.Case) ([]procedure.Candidate, error)
+	outcomes   func(*evidence.Case) ([]*result.Outcome, error)
+
 	headers remembered[[]*request.Series]
 	spoken  remembered[spoken]
 }
@@ -44,7 +52,8 @@ func New(o Options) *Engine {
 	if o.Limits == (dataset.Limits{}) {
 		o.Limits = dataset.DefaultLimits()
 	}
-	e := &Engine{options: o, byName: map[string]*lint.Rule{}, slots: make(chan struct{}, o.Workers)}
+	e := &Engine{options: o, byName: map[string]*lint.Rule{}, slots: make(chan struct{}, o.Workers),
+		candidates: procedure.Candidates, outcomes: result.Outcomes}
 	for _, r := range o.Rules {
 		rule := r
 		e.rules = append(e.rules, &rule)

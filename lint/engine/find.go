@@ -47,7 +47,7 @@ func (ed *Edition) findAt(ctx context.Context, path string, found map[string]boo
 	switch {
 	case open, err == nil && !info.IsDir():
 		if request.DocumentKind(path) == request.NoDoc {
-			return fmt.Errorf("%s is no document: documents are named NAME.series.toml, NAME.analysis.toml or NAME.conventions.toml", path)
+			return noDocument(path)
 		}
 		found[path] = true
 		return nil
@@ -58,6 +58,10 @@ func (ed *Edition) findAt(ctx context.Context, path string, found map[string]boo
 	}
 	ed.walk(ctx, path, found)
 	return nil
+}
+
+func noDocument(path string) error {
+	return fmt.Errorf("%s is no document: documents are named NAME.series.toml, NAME.analysis.toml or NAME.conventions.toml", path)
 }
 
 // walk collects the documents in a folder and below.

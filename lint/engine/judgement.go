@@ -96,15 +96,29 @@ func (h *hearing) run(ctx context.Context, d depth) error {
 		}
 		h.requests = append(h.requests, h.asking(ctx, i, d))
 	}
-	err := h.ed.engine.each(ctx, len(h.requests), func(i int) { h.requests[i].hear(ctx, d) })
+	err := h.hearRequests(ctx, d)
 	if err == nil && d == withProofs {
 		err = h.proveAll(ctx)
 	}
+	if err == nil && h.complete && h.only < 0 {
+		h.document.add(h.lateDeviations(ctx))
+	}
+	return err
+}
+
+// hearRequests asks the rules of every request; what is only remembered waits
+// for no worker.
+func (h *hearing) hearRequests(ctx context.Context, d depth) error {
+	var err error
+	if d == textOnly {
+		for _, a := range h.requests {
+			a.recall()
+		}
+	} else {
+		err = h.ed.engine.each(ctx, len(h.requests), func(i int) { h.requests[i].hear(ctx) })
+	}
 	for _, a := range h.requests {
 		h.complete = h.complete && a.complete
-	}
-	if h.complete && err == nil && h.only < 0 {
-		h.document.add(h.idleDeviations(ctx))
 	}
 	return err
 }
@@ -131,21 +145,11 @@ func (h *hearing) hearManifest(ctx context.Context, d depth) {
 // findings gathers what was said, weighs it and lets the deviations answer.
 func (h *hearing) findings() []finding.Finding {
 	all := slices.Concat(h.document.findings, h.manifest.findings)
-	h.weigh(all)
+	h.weigh(all, h.devs)
 	for _, a := range h.requests {
 		all = append(all, a.attached()...)
 	}
 	return slices.DeleteFunc(all, func(f finding.Finding) bool { return f.Severity == finding.None })
-}
-
-// answer lets the first deviation that speaks of a finding answer it.
-func (r *reading) answer(f *finding.Finding) {
-	for _, d := range r.deviations() {
-		if r.takesEffect(d) && d.answers(f) {
-			f.Deviation = d.Deviation
-			return
-		}
-	}
 }
 
 func (h *hearing) broken() []string {
@@ -156,21 +160,27 @@ func (h *hearing) broken() []string {
 	return all
 }
 
-// idleDeviations tells which deviations answer nothing now that every rule
-// has spoken.
-func (h *hearing) idleDeviations(ctx context.Context) said {
+// lateDeviations tells of the deviations what only the data show: those given
+// for data that have changed since, and those that answer nothing now that
+// every rule has spoken.
+func (h *hearing) lateDeviations(ctx context.Context) said {
 	used := map[*request.Deviation]bool{}
 	for _, f := range h.findings() {
 		used[f.Deviation] = true
 	}
 	q := h.inquiry()
-	for _, d := range h.deviations() {
-		if h.takesEffect(d) && !used[d.Deviation] {
-			q.Problems = append(q.Problems, request.Problem{Rule: "idle-deviation", At: d.place("from"), Request: d.request,
-				Message: "This deviation answers nothing: " + d.From + " does not speak here. Take it out."})
+	late := func(d *deviation, rule, message string) {
+		q.Problems = append(q.Problems, request.Problem{Rule: rule, At: d.place("from"), Request: d.request, Message: message})
+	}
+	for _, d := range h.devs {
+		switch {
+		case d.changed:
+			late(d, endedDeviation, "This deviation was given for other data: they have changed since. Renew it for the present data, or answer the finding.")
+		case h.takesEffect(d) && !used[d.Deviation]:
+			late(d, idleDeviation, "This deviation answers nothing: "+d.From+" does not speak here. Take it out.")
 		}
 	}
-	return h.ask(ctx, lint.OfDocument, q, func(r *lint.Rule) bool { return r.Name == "idle-deviation" })
+	return h.ask(ctx, lint.OfDocument, q, func(r *lint.Rule) bool { return r.Name == endedDeviation || r.Name == idleDeviation })
 }
 
 // order puts findings in their stated order: place, rule; then whatever makes

@@ -47,6 +47,15 @@ func (ed *Edition) chain(folder string) []step {
 	return steps
 }
 
+// givenConventions is the error of conventions that were given to replace the
+// search and cannot be read: nothing is judged without them.
+func (ed *Edition) givenConventions() error {
+	if given := ed.engine.options.Conventions; given != "" {
+		return ed.snapshot(given).err
+	}
+	return nil
+}
+
 // withBase lists a conventions file after what it builds on; a file that
 // builds on itself by any way is taken once.
 func (ed *Edition) withBase(s *snapshot, folder string, above []string) []step {

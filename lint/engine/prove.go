@@ -2,6 +2,7 @@ package engine
 
 import (
 	"context"
+	"fmt"
 	"slices"
 
 	"lagwise/lint"
@@ -29,6 +30,7 @@ type proof struct {
 	findings []finding.Finding // of request scope, weighed and answered
 	leaves   []string          // rules at warning or above that still speak
 	clean    bool
+	broken   string
 	worst    finding.Severity // of the rules that a rewrite can answer; None when they are silent
 }
 
@@ -61,7 +63,12 @@ func (a *asking) propose() {
 	if a.c == nil || a.mended() == finding.None && !a.asks() {
 		return
 	}
-	candidates, err := procedure.Candidates(a.c)
+	var candidates []procedure.Candidate
+	var err error
+	if cause := shielded(func() { candidates, err = a.ed.engine.candidates(a.c) }); cause != nil {
+		a.broken = append(a.broken, fmt.Sprintf("the procedure on %s in %s: %v", a.asked.Name, a.file.file, cause))
+		return
+	}
 	if err != nil {
 		return // what keeps the procedure from the data keeps the rules too, and they say so
 	}
@@ -101,7 +108,12 @@ func (a *asking) asks() bool {
 func (a *asking) prove(ctx context.Context, i int) {
 	p := a.proofs[i]
 	c := a.c.With(p.Request)
-	outcomes, err := result.Outcomes(c)
+	var outcomes []*result.Outcome
+	var err error
+	if cause := shielded(func() { outcomes, err = a.ed.engine.outcomes(c) }); cause != nil {
+		p.broken = fmt.Sprintf("computing %q for %s in %s: %v", p.Title, a.asked.Name, a.file.file, cause)
+		return
+	}
 	if err != nil || !computed(outcomes) {
 		return
 	}
@@ -110,7 +122,7 @@ func (a *asking) prove(ctx context.Context, i int) {
 		return
 	}
 	raw := slices.Clone(s.findings)
-	a.weigh(s.findings)
+	a.weigh(s.findings, a.own)
 	left := a.leaves(s.findings)
 	if slices.Contains(left, unacceptedMethod) {
 		return

@@ -25,14 +25,21 @@ type reading struct {
 	file     *snapshot
 	lab      *lab
 	problems []request.Problem
-	requests []bound  // of an analysis
-	sources  []source // of an analysis
-	whole    bool     // all series of all manifests are known
+	requests []bound // of an analysis
+	whole    bool    // all series of all manifests are known
+	around   string  // digest of the documents that bear on every request
+	devs     []*deviation
 }
 
 // read binds a document to its surroundings. The error is that of a document
 // that cannot be read; one that is too large is a problem, told as a finding.
 func (ed *Edition) read(ctx context.Context, path string, d depth) (*reading, error) {
+	if request.DocumentKind(path) == request.NoDoc {
+		return nil, noDocument(path)
+	}
+	if err := ed.givenConventions(); err != nil {
+		return nil, err
+	}
 	s := ed.snapshot(path)
 	r := &reading{ed: ed, file: s, lab: ed.lab(s.path)}
 	if s.err != nil {
@@ -50,10 +57,9 @@ func (ed *Edition) read(ctx context.Context, path string, d depth) (*reading, er
 		r.bindRequests(ctx, d)
 	case request.ConventionsDoc:
 		r.problems = append(r.problems, ed.conventionsProblems(s)...)
-	case request.NoDoc:
-		return nil, fmt.Errorf("%s is no document: documents are named NAME.series.toml, NAME.analysis.toml or NAME.conventions.toml", path)
 	}
-	for _, d := range r.deviations() {
+	r.devs = s.deviations()
+	for _, d := range r.devs {
 		r.problems = append(r.problems, r.deviationProblems(d)...)
 	}
 	return r, nil
@@ -61,7 +67,12 @@ func (ed *Edition) read(ctx context.Context, path string, d depth) (*reading, er
 
 func (r *reading) bindRequests(ctx context.Context, d depth) {
 	sources, problems := r.ed.sources(ctx, r.file, d)
-	r.sources = sources
+	texts := []string{r.lab.digest}
+	for _, src := range sources {
+		texts = append(texts, src.file.path, string(src.file.text))
+	}
+	sum := digest(texts...)
+	r.around = string(sum[:])
 	r.problems = append(r.problems, problems...)
 	binder := newBinder(sources, len(problems) > 0)
 	r.whole = binder.whole

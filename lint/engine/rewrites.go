@@ -12,6 +12,11 @@ import (
 // conclude makes the proven candidates rewrites: in their order, at most one
 // of them preferred.
 func (a *asking) conclude() {
+	for _, p := range a.proofs {
+		if p.broken != "" {
+			a.broken = append(a.broken, p.broken)
+		}
+	}
 	a.proofs = slices.DeleteFunc(a.proofs, func(p *proof) bool { return p.outcomes == nil })
 	preferred := a.preferred()
 	for _, p := range a.proofs {

@@ -13,20 +13,22 @@ import (
 // Screen says what is known of every series of a manifest, or of a bare data
 // file, of which every numeric column is a series.
 func (ed *Edition) Screen(ctx context.Context, path string) ([]result.Screened, error) {
-	s := ed.snapshot(path)
-	lab := ed.lab(s.path)
+	path = filepath.Clean(path)
+	root := ed.Root(path)
 	var m *request.Manifest
-	switch {
-	case s.kind == request.ManifestDoc && s.err != nil:
-		return nil, s.err
-	case s.kind == request.ManifestDoc:
+	switch request.DocumentKind(path) {
+	case request.ManifestDoc:
+		s := ed.snapshot(path)
+		if s.err != nil {
+			return nil, s.err
+		}
 		m = s.manifest().Manifest
-	case s.kind == request.NoDoc:
-		m = bare(s.file)
+	case request.NoDoc:
+		m = bare(ed.rel(root, path))
 	default:
-		return nil, fmt.Errorf("%s has no series of its own: screen takes manifests and data files", s.file)
+		return nil, fmt.Errorf("%s has no series of its own: screen takes manifests and data files", path)
 	}
-	return result.Screen(ctx, ed.engine.store, m, ed.guard(s.root), lab.settings)
+	return result.Screen(ctx, ed.engine.store, m, ed.guard(root), ed.lab(path).settings)
 }
 
 // bare is the manifest of a data file that has none.

@@ -32,3 +32,11 @@ func (e *Engine) each(ctx context.Context, n int, work func(i int)) error {
 	group.Wait()
 	return ctx.Err()
 }
+
+// shielded runs code that is not ours to trust, and returns what it panicked
+// with.
+func shielded(do func()) (cause any) {
+	defer func() { cause = recover() }()
+	do()
+	return nil
+}
