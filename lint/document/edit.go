@@ -34,6 +34,9 @@ func Apply(text []byte, edits []Edit) ([]byte, error) {
 // It returns nil where there is no such place: the key is a table with a
 // header, or the table is only implied by longer headers.
 func (t *Tree) Set(table *Node, key, value string) []Edit {
+	if t.unreadable {
+		return nil
+	}
 	if m := table.Get(key); m != nil {
 		if m.Value.Kind == Table || m.Value.Kind == TableArray {
 			return nil

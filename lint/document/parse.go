@@ -31,6 +31,7 @@ func Parse(text []byte) *Tree {
 	b.enter(b.tree.Root, nil, []*Node{b.tree.Root})
 	if problem, wide := utf16(text); wide {
 		b.problem(problem.At, problem.Message)
+		b.tree.unreadable = true
 		return b.tree
 	}
 	for from := bomLength(text); from < len(text); {

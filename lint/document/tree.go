@@ -33,6 +33,7 @@ type Tree struct {
 	Problems []Problem // by place
 	Comments []Span    // every comment, from # to the end of its line; by place
 
+	unreadable bool        // not UTF-8 at all: no edit fits
 	statements []statement // by place: what At and the edits look up
 }
 

@@ -63,7 +63,7 @@ func (b *builder) ask(at Span) (Problem, bool) {
 		return Problem{}, false // it has no bound on nesting of its own
 	}
 	pe, wrong := decode(part)
-	if !wrong {
+	if !wrong || bytes.IndexByte(part[:min(6, len(part))], 0) >= 0 { // which it takes for UTF-16
 		return Problem{}, false
 	}
 	start := at.Start + max(0, min(pe.Position.Start, len(part)))
