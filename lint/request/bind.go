@@ -58,7 +58,7 @@ func (r reader) list(key string) []string {
 
 // items returns the sound scalars of a list, or the one scalar itself.
 func (r reader) items(n *document.Node) []*document.Node {
-	if n.Kind != document.Array {
+	if !isList(n) {
 		return []*document.Node{n}
 	}
 	var sound []*document.Node

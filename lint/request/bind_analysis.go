@@ -9,13 +9,22 @@ import (
 // BindAnalysis reads an analysis out of a tree. file is its path relative to
 // the root. Requests stand in the order of the text, whatever their kind.
 func BindAnalysis(file string, t *document.Tree) (*Analysis, []Problem) {
-	return BindAnalysisIn(file, t, t.Root)
+	return BindAnalysisUnder(file, t)
 }
 
-// BindAnalysisIn reads an analysis out of one table of a tree, such as
-// [tool.lagwise] of the metadata block of a script.
-func BindAnalysisIn(file string, t *document.Tree, root *document.Node) (*Analysis, []Problem) {
+// BindAnalysisUnder reads an analysis out of the table at a path of keys, such
+// as tool, lagwise in the metadata block of a script. Where there is no such
+// table the analysis is empty; what stands beside it is not judged.
+func BindAnalysisUnder(file string, t *document.Tree, path ...string) (*Analysis, []Problem) {
 	c := newChecker(t)
+	root := t.Root
+	for _, key := range path {
+		m := root.Get(key)
+		if m == nil || !m.Value.IsTable() {
+			return &Analysis{File: file, Tree: t}, c.problems
+		}
+		root = m.Value
+	}
 	c.table(root, AnalysisDoc.String(), document.Span{})
 	r := c.read(root)
 	a := &Analysis{File: file, Title: r.text("title", ""), Manifests: r.list("manifests"), Tree: t}
@@ -26,8 +35,10 @@ func BindAnalysisIn(file string, t *document.Tree, root *document.Node) (*Analys
 	entries := requestsIn(r)
 	before := len(c.problems)
 	for i, e := range entries {
+		sofar := len(c.problems)
 		asked := c.asked(e)
-		asked.File, asked.Index = file, i
+		asked.faulty = len(c.problems) > sofar || !t.Valid()
+		asked.File, asked.Index, asked.under = file, i, path
 		a.Requests = append(a.Requests, asked)
 		told = append(told, len(c.problems))
 	}
@@ -211,7 +222,7 @@ func (c *checker) predictors(r reader) []namedPredictor {
 		return nil
 	}
 	entries := []*document.Node{n}
-	if n.Kind == document.Array {
+	if isList(n) {
 		entries = n.Items
 	}
 	var all []namedPredictor

@@ -138,7 +138,9 @@ type Asked struct {
 	// question, by, …): equal digests give equal evidence.
 	Digest [32]byte
 
-	madeUp bool // the name is not written
+	madeUp bool     // the name is not written
+	faulty bool     // the request has problems, or its document cannot be read
+	under  []string // keys from the root of the tree to the table it was bound in
 }
 
 // Key returns the span of the value of a key when it is written, else of the

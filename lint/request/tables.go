@@ -36,7 +36,7 @@ func (c *checker) tableList(k Key, n *document.Node) {
 	case n.IsTable():
 		c.add(Problem{Rule: "wrong-value", At: placeOf(n),
 			Message: fmt.Sprintf("%s is a list of tables: write [[%s]], or %s.", k.Name, k.Name, k.Example)})
-	case n.Kind != document.Array && n.Kind != document.TableArray:
+	case !isList(n):
 		c.wrong(n, "%s is a list of tables: write [[%s]], or %s.", k.Name, k.Name, k.Example)
 		return
 	}

@@ -17,7 +17,7 @@ func (c *checker) value(k Key, n *document.Node) {
 		c.namedTables(k, n)
 	case k.Types&TableList != 0:
 		c.tableList(k, n)
-	case n.Kind == document.Array && k.Types&List != 0:
+	case isList(n) && k.Types&List != 0:
 		for _, item := range n.Items {
 			c.single(k, item)
 		}
@@ -25,6 +25,10 @@ func (c *checker) value(k Key, n *document.Node) {
 	default:
 		c.single(k, n)
 	}
+}
+
+func isList(n *document.Node) bool {
+	return n.Kind == document.Array || n.Kind == document.TableArray
 }
 
 // single checks a value that is not a list.

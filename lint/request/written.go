@@ -111,7 +111,7 @@ func (r *Request) writtenSample(key string) (toml string, ok bool) {
 		return word(r.Aggregate, ""), true
 	case "least-share":
 		if r.LeastShare != 0.8 && r.LeastShare != 0 {
-			return float(r.LeastShare), true
+			return plain(r.LeastShare), true
 		}
 		return "", true
 	case "year-starts":
@@ -120,7 +120,7 @@ func (r *Request) writtenSample(key string) (toml string, ok bool) {
 		return length(r.Tolerance, "0"), true
 	case "grid":
 		if r.Grid != nil {
-			return "{ step = " + float(r.Grid.Step) + ", by = " + document.Quote(r.Grid.By) + " }", true
+			return "{ step = " + plain(r.Grid.Step) + ", by = " + document.Quote(r.Grid.By) + " }", true
 		}
 		return "", true
 	case "from":
@@ -153,12 +153,16 @@ func predictorList(predictors []Predictor) string {
 	}
 	items := make([]string, len(predictors))
 	for i, p := range predictors {
-		items[i] = document.Quote(p.Series)
-		if p.Lag != 0 {
-			items[i] = "{ series = " + items[i] + ", lag = " + strconv.Itoa(p.Lag) + " }"
-		}
+		items[i] = predictorItem(p)
 	}
 	return "[" + strings.Join(items, ", ") + "]"
+}
+
+func predictorItem(p Predictor) string {
+	if p.Lag == 0 {
+		return document.Quote(p.Series)
+	}
+	return "{ series = " + document.Quote(p.Series) + ", lag = " + strconv.Itoa(p.Lag) + " }"
 }
 
 func word(s, otherwise string) string {
@@ -175,10 +179,6 @@ func length(s, otherwise string) string {
 	}
 	return s
 }
-
-// float writes a number that TOML reads as one: an exponent, a fraction, or
-// a whole number.
-func float(v float64) string { return plain(v) }
 
 func flag(v bool) string {
 	if v {
