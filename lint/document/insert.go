@@ -23,10 +23,19 @@ func (t *Tree) after(offset int, indent, pair, eol string) Edit {
 	return Edit{At: Span{end, end}, Text: eol + indent + pair}
 }
 
-// first adds a line where the top level has none: before the first header and
-// the comments that stand directly above it.
+// first adds a line where the top level has none: at the start of the text, or
+// behind the comment lines there if a blank line sets them apart.
 func (t *Tree) first(pair, eol string) Edit {
-	at := bomLength(t.Text)
+	start := bomLength(t.Text)
+	at := start
+	for at < len(t.Text) && t.Text[at] == '#' {
+		at = nextLine(t.Text, at)
+	}
+	if apart := len(bytes.Trim(lineAt(t.Text, at), " \t")) == 0; at > start && at < len(t.Text) && apart {
+		at = nextLine(t.Text, at)
+	} else {
+		at = start
+	}
 	if len(t.Text) > at {
 		pair += eol
 	}

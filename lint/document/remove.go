@@ -14,10 +14,7 @@ func (t *Tree) wholeLine(s Span) Span {
 	if skipBlanks(t.Text, start, s.Start) < s.Start || skipBlanks(t.Text, s.End, end) < end {
 		return s
 	}
-	if end < len(t.Text) && t.Text[end] == '\r' {
-		end++
-	}
-	return Span{start, min(end+1, len(t.Text))}
+	return Span{start, nextLine(t.Text, end)}
 }
 
 // removeInline takes a member out of an inline table with the comma behind it,

@@ -154,9 +154,6 @@ func TestInvalidDocumentsOfTheSuite(t *testing.T) {
 				t.Errorf("%s: problem %+v", name, p)
 			}
 		}
-		if len(tree.Problems) > 3 {
-			t.Logf("%s\n%s\n%s", name, text, problems(tree))
-		}
 		around := "zz-before = 1\n" + string(text) + "\n\n[zz-after]\nzz = 2\n"
 		tree = Parse([]byte(around))
 		if before := tree.Root.Get("zz-before"); before == nil {

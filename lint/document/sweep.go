@@ -149,6 +149,14 @@ func lineAt(text []byte, at int) []byte {
 	return line
 }
 
+// nextLine is where the line after an offset begins, or the end of the text.
+func nextLine(text []byte, at int) int {
+	if i := bytes.IndexByte(text[at:], '\n'); i >= 0 {
+		return at + i + 1
+	}
+	return len(text)
+}
+
 // pairLike reports whether a line begins as "key =".
 func pairLike(line []byte) bool {
 	keys, i := keysOf(line, 0, len(line))
