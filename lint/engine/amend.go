@@ -109,6 +109,9 @@ func (m *amending) choose(ed *Edition, j *Judgement) []finding.Edit {
 			m.Left = append(m.Left, fmt.Sprintf("%s: the rewrites lead back to a text that stood here before, so it is left as it is now", f.Request))
 			continue
 		}
+		if slices.ContainsFunc(r.Edits, func(e finding.Edit) bool { return e.File != m.File }) {
+			continue // one document is amended at a time
+		}
 		if !apart(edits, r.Edits) {
 			continue // the next round takes it
 		}
@@ -159,14 +162,11 @@ func apart(chosen, more []finding.Edit) bool {
 	return true
 }
 
-// apply makes the edition in which the edits are done. Edits of other
-// documents are not: one document is amended at a time.
+// apply makes the edition in which the edits are done.
 func (m *amending) apply(ed *Edition, edits []finding.Edit) (*Edition, error) {
 	var own []document.Edit
 	for _, e := range edits {
-		if e.File == m.File {
-			own = append(own, document.Edit{At: e.At, Text: e.Text})
-		}
+		own = append(own, document.Edit{At: e.At, Text: e.Text})
 	}
 	slices.SortStableFunc(own, func(a, b document.Edit) int { return a.At.Start - b.At.Start })
 	after, err := document.Apply(m.After, own)

@@ -62,3 +62,43 @@ func TestUnsavedManifestCounts(t *testing.T) {
 	w.Open(filepath.Join(root, "shore.series.toml"), []byte(shore), 1)
 	wantRules(t, judge(t, w.Edition(), a), "")
 }
+
+func TestDependsOn(t *testing.T) {
+	root := lay(t, map[string]string{
+		"coast/shore.series.toml":    shore,
+		"coast/deep/a.analysis.toml": between("eelgrass", "boats"),
+		"inland/x.series.toml":       shore,
+	})
+	ed := New(Options{}).Workspace(root).Edition()
+	for changed, want := range map[string]bool{
+		"coast/shore.csv":                  true,
+		"coast/shore.series.toml":          true,
+		"coast/deep/a.analysis.toml":       true,
+		"coast/deep/new.series.toml":       true,
+		"gone.conventions.toml":            true,
+		"inland/x.series.toml":             false,
+		"inland/x.conventions.toml":        false,
+		"coast/deep/another.analysis.toml": false,
+	} {
+		if got := ed.DependsOn(filepath.Join(root, "coast/deep/a.analysis.toml"), filepath.Join(root, changed)); got != want {
+			t.Errorf("depends on %s: %v", changed, got)
+		}
+	}
+}
+
+func TestIdleSeries(t *testing.T) {
+	root := lay(t, map[string]string{
+		"shore.series.toml":    shore,
+		"a.analysis.toml":      between("eelgrass", "shore:boats"),
+		"lab.conventions.toml": "[review]\nexclude = [\"old\"]\n",
+		"old/b.analysis.toml":  "manifests = [\"../shore.series.toml\"]\n" + between("eelgrass", "nitrate"),
+	})
+	ed := New(Options{}).Workspace(root).Edition()
+	r, err := ed.read(t.Context(), filepath.Join(root, "shore.series.toml"), withData)
+	if err != nil {
+		t.Fatal(err)
+	}
+	if got := strings.Join(r.idle(t.Context()), " "); got != "nitrate" {
+		t.Errorf("idle: %q", got)
+	}
+}

@@ -10,8 +10,8 @@ import (
 
 // Reaches lists the absolute paths that a document depends on, itself
 // included, sorted: manifests, data files, conventions; those that are missing
-// too. What stands in the document's place in a folder listing (a manifest or
-// conventions that are not written yet) is not listed.
+// too. Manifests and conventions that could come or go in the folders above are
+// not listed; DependsOn counts them.
 func (ed *Edition) Reaches(path string) []string {
 	s := ed.snapshot(path)
 	all := append([]string{s.path}, ed.lab(s.path).reaches...)
@@ -55,4 +55,21 @@ func (ed *Edition) basesOf(s *snapshot) []string {
 		all = append(all, filepath.Join(filepath.Dir(s.path), filepath.FromSlash(written)))
 	}
 	return all
+}
+
+// DependsOn reports whether a change of any of the paths may change what is
+// said of a document: what it reaches, and manifests and conventions that come
+// or go in its folder or above it.
+func (ed *Edition) DependsOn(path string, changed ...string) bool {
+	s := ed.snapshot(path)
+	reaches := ed.Reaches(path)
+	folders := upward(filepath.Dir(s.path), s.root)
+	for _, c := range clean(changed) {
+		kind := request.DocumentKind(c)
+		found := kind == request.ConventionsDoc || kind == request.ManifestDoc && s.kind == request.AnalysisDoc
+		if slices.Contains(reaches, c) || found && slices.Contains(folders, filepath.Dir(c)) {
+			return true
+		}
+	}
+	return false
 }

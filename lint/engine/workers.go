@@ -14,11 +14,12 @@ func (e *Engine) each(ctx context.Context, n int, work func(i int)) error {
 	for range min(n, e.options.Workers) {
 		group.Go(func() {
 			for i := range next {
-				e.slots <- struct{}{}
-				if ctx.Err() == nil {
+				select {
+				case e.slots <- struct{}{}:
 					work(i)
+					<-e.slots
+				case <-ctx.Done():
 				}
-				<-e.slots
 			}
 		})
 	}
