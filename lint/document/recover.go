@@ -38,22 +38,15 @@ func (b *builder) recover(start int, err error) int {
 // read beyond it is read again; a budget on that keeps the whole linear, at
 // the price of a few statements when a text is built to exhaust it.
 func (b *builder) resume(s *sweep) int {
-	indent := s.at - lineStart(b.text, s.at)
 	header := b.text[s.at] == '['
 	for {
 		s.line(header)
 		if s.at >= len(b.text) {
 			return len(b.text)
 		}
-		if again := s.errorAt - s.at; again > 0 {
-			if b.reread+again > 4*len(b.text)+1<<16 {
-				continue
-			}
-			if s.begins(indent) {
-				b.reread += again
-				return s.at
-			}
-		} else if s.begins(indent) {
+		again := max(0, s.errorAt-s.at)
+		if b.reread+again <= 4*len(b.text)+1<<16 && s.begins() {
+			b.reread += again
 			return s.at
 		}
 	}

@@ -112,7 +112,7 @@ func closing(text []byte, from int, quote []byte) int {
 // begins reports whether a statement begins on the line at which the sweep is.
 // With all closed it does; in a string that never ends, if it looks so; inside
 // of brackets, if the line could hardly stand there.
-func (s *sweep) begins(indent int) bool {
+func (s *sweep) begins() bool {
 	line := lineAt(s.text, s.at)
 	like, named := headerLike(line)
 	switch {
@@ -123,9 +123,7 @@ func (s *sweep) begins(indent int) bool {
 	case pairLike(line):
 		return s.text[s.brackets[len(s.brackets)-1]] == '[' || !s.memberLike(line)
 	}
-	outside := len(line)-len(bytes.TrimLeft(line, " \t")) <= indent
-	stopped := s.at <= s.errorAt && s.errorAt <= s.at+len(line)
-	return like && (named || outside && stopped)
+	return named // [1, 2] and ["a"] are items of an array
 }
 
 // memberLike reports whether a line "key = value" reads as a member of an
@@ -164,7 +162,7 @@ func pairLike(line []byte) bool {
 }
 
 // headerLike reports whether a line reads as a header, closed or half typed;
-// named: with a bare word in it, so that it cannot be an array of values.
+// named: it is one with a bare word in it, so it cannot be an array of values.
 func headerLike(line []byte) (like, named bool) {
 	line = bytes.TrimLeft(line, " \t")
 	if len(line) == 0 || line[0] != '[' {
@@ -184,7 +182,8 @@ func headerLike(line []byte) (like, named bool) {
 		}
 		named = named || word
 	}
-	return len(rest) == 0 || rest[0] == '#', named
+	like = len(rest) == 0 || rest[0] == '#'
+	return like, like && named
 }
 
 // openers is the number of brackets with which a header opens.
