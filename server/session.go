@@ -1,0 +1,116 @@
+package server
+
+import (
+	"context"
+	"errors"
+	"log"
+	"time"
+
+	"go.lsp.dev/protocol"
+	"go.lsp.dev/uri"
+
+	"lagwise/lint/engine"
+)
+
+// session is one client's view of the workspace.
+type session struct {
+	protocol.UnimplementedServer
+
+	base    context.Context // ends with the session
+	stop    context.CancelFunc
+	client  protocol.Client
+	options Options
+	logger  *log.Logger
+	clock   clock
+
+	able      abilities // set by initialize, read only afterwards
+	folders   folders
+	workspace *engine.Workspace // made by initialize
+	documents documents
+	publisher *publisher
+	watch     *watch
+	progress  progress
+}
+
+func newSession(base context.Context, stop context.CancelFunc, client protocol.Client, o Options, logger *log.Logger, c clock) *session {
+	s := &session{
+		base: base, stop: stop, client: client, options: o, logger: logger, clock: c,
+		documents: documents{open: map[string]*openDocument{}},
+		progress:  progress{cancel: map[string]context.CancelFunc{}},
+	}
+	s.publisher = newPublisher(s)
+	s.watch = newWatch(s)
+	if o.ParentPID != 0 {
+		s.followParent(o.ParentPID)
+	}
+	return s
+}
+
+// start runs f beside the read loop; a panic in it is logged and goes no
+// further.
+func (s *session) start(what string, f func()) {
+	go func() {
+		defer (&transport{logger: s.logger}).recovered(what)
+		f()
+	}()
+}
+
+// editionKey is where a request's context keeps its edition.
+type editionKey struct{}
+
+func (s *session) snapshot(ctx context.Context) context.Context {
+	return context.WithValue(ctx, editionKey{}, s.workspace.Edition())
+}
+
+// edition returns the state of the workspace at the moment the request came.
+func edition(ctx context.Context) *engine.Edition {
+	return ctx.Value(editionKey{}).(*engine.Edition)
+}
+
+// followed returns the file that a request is about; false when it is no
+// file, or one whose text is not known.
+func (s *session) followed(u uri.URI) (string, bool) {
+	path, ok := pathOf(u)
+	if !ok {
+		return "", false
+	}
+	doc, open := s.documents.get(path)
+	return path, !open || !doc.astray
+}
+
+// logFailure logs an error, but not that work was cancelled.
+func (s *session) logFailure(what string, err error) {
+	if !errors.Is(err, context.Canceled) {
+		s.logger.Printf("%s: %v", what, err)
+	}
+}
+
+// pathOf returns the file that a URI names; false for what is not a file.
+func pathOf(u uri.URI) (string, bool) {
+	if !u.IsFile() {
+		return "", false
+	}
+	path := u.FsPath()
+	return path, path != ""
+}
+
+// clock is the time a session lives by.
+type clock struct {
+	after func(d time.Duration, f func()) (stop func() bool)
+}
+
+var realClock = clock{after: func(d time.Duration, f func()) func() bool { return time.AfterFunc(d, f).Stop }}
+
+// repeatedly calls f every d until the session ends.
+func (s *session) repeatedly(d time.Duration, what string, f func()) {
+	s.clock.after(d, func() {
+		if s.base.Err() != nil {
+			return
+		}
+		func() {
+			defer (&transport{logger: s.logger}).recovered(what)
+			f()
+		}()
+		s.repeatedly(d, what, f)
+	})
+}
