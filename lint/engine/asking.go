@@ -16,13 +16,15 @@ import (
 type asking struct {
 	*reading
 	bound
-	c        *evidence.Case // nil: the request is not computable as it stands
-	why      string         // it is not
+	c        *evidence.Case // while the rules speak
+	why      string         // it cannot be computed
 	own      []*deviation   // of this request
 	said                    // weighed, and answered by deviations
 	rewrites []finding.Rewrite
 	proofs   []*proof
 	complete bool
+	// computable is whether the text says which series to compute from what.
+	computable bool
 }
 
 // asking prepares the judgement of one request. A request with an error in
@@ -45,6 +47,7 @@ func (h *hearing) asking(ctx context.Context, i int, d depth) *asking {
 		return a
 	}
 	if a.why == "" {
+		a.computable = true
 		a.c = a.newCase(ctx)
 	}
 	return a
@@ -81,7 +84,7 @@ type spoken struct {
 
 // recall says what was said of the same text before.
 func (a *asking) recall() {
-	if a.c == nil {
+	if !a.computable {
 		return
 	}
 	before, known := a.ed.engine.spoken.get(a.textKey())
@@ -95,7 +98,7 @@ func (a *asking) recall() {
 
 // hear asks the rules about the request.
 func (a *asking) hear(ctx context.Context) {
-	if a.c == nil {
+	if !a.computable {
 		return
 	}
 	a.said = a.ask(ctx, lint.OfRequest, a.inquiryOf(a.asked.Request, a.c), nil)

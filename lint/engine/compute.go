@@ -3,7 +3,9 @@ package engine
 import (
 	"context"
 	"fmt"
+	"path/filepath"
 	"slices"
+	"strconv"
 
 	"lagwise/lint/evidence"
 	"lagwise/lint/finding"
@@ -12,7 +14,7 @@ import (
 
 // ProveRequest returns the rewrites of one request, each proven.
 func (ed *Edition) ProveRequest(ctx context.Context, path string, index int) ([]finding.Rewrite, error) {
-	a, err := ed.proven(ctx, path, index)
+	a, err := ed.request(ctx, path, index)
 	if err != nil {
 		return nil, err
 	}
@@ -21,20 +23,20 @@ func (ed *Edition) ProveRequest(ctx context.Context, path string, index int) ([]
 
 // Explain gathers all that is known of one request.
 func (ed *Edition) Explain(ctx context.Context, path string, index int) (*result.Explanation, error) {
-	a, err := ed.proven(ctx, path, index)
+	a, err := ed.request(ctx, path, index)
 	if err != nil {
 		return nil, err
 	}
-	if a.c == nil {
+	if !a.computable {
 		return &result.Explanation{File: a.file.file, Request: a.asked.Name, Kind: a.asked.Kind.String(), NoPreferred: a.uncomputable()}, nil
 	}
-	better, p := a.recommended()
+	c, p := a.newCase(ctx), a.preferred()
 	var leaves []string
 	if p != nil {
 		leaves = p.leaves
 	}
 	var e *result.Explanation
-	if cause := shielded(func() { e, err = result.Explain(a.c, better, leaves) }); cause != nil {
+	if cause := shielded(func() { e, err = result.Explain(c, p.in(c), leaves) }); cause != nil {
 		return nil, a.brokeDown(cause)
 	}
 	if err != nil {
@@ -56,13 +58,13 @@ func (ed *Edition) Explain(ctx context.Context, path string, index int) (*result
 // written, and as the preferred rewrite would have it. A request that cannot
 // be computed has outcomes whose Error says why.
 func (ed *Edition) Compute(ctx context.Context, path string) ([]result.Computed, error) {
-	h, err := ed.heard(ctx, path, -1)
+	h, err := ed.heard(ctx, path, everyRequest, withProofs)
 	if err != nil {
 		return nil, err
 	}
 	each := make([][]result.Computed, len(h.requests))
 	failures := make([]error, len(h.requests))
-	err = ed.engine.each(ctx, len(h.requests), func(i int) { each[i], failures[i] = h.requests[i].compute() })
+	err = ed.engine.each(ctx, len(h.requests), func(i int) { each[i], failures[i] = h.requests[i].compute(ctx) })
 	for _, failure := range failures {
 		if err == nil {
 			err = failure
@@ -71,20 +73,20 @@ func (ed *Edition) Compute(ctx context.Context, path string) ([]result.Computed,
 	return slices.Concat(each...), err
 }
 
-func (a *asking) compute() ([]result.Computed, error) {
-	if a.c == nil {
+func (a *asking) compute(ctx context.Context) ([]result.Computed, error) {
+	if !a.computable {
 		return a.notComputed(), nil
 	}
-	better, p := a.recommended()
-	var all []result.Computed
+	c, p := a.newCase(ctx), a.preferred()
+	var both []result.Computed
 	var err error
-	if cause := shielded(func() { all, err = result.Compare(a.c, better) }); cause != nil {
+	if cause := shielded(func() { both, err = result.Compare(c, p.in(c)) }); cause != nil {
 		return nil, a.brokeDown(cause)
 	}
-	for i := range all {
-		a.settle(&all[i], p)
+	for i := range both {
+		a.settle(&both[i], p)
 	}
-	return all, err
+	return both, err
 }
 
 func (a *asking) brokeDown(cause any) error {
@@ -99,29 +101,29 @@ func (a *asking) settle(c *result.Computed, p *proof) {
 	}
 }
 
-// recommended is the case of the preferred rewrite, nil when there is none.
-func (a *asking) recommended() (*evidence.Case, *proof) {
-	if p := a.preferred(); p != nil {
-		return a.c.With(p.Request), p
+// in is the case of a proof beside the one as written; nil when there is none.
+func (p *proof) in(c *evidence.Case) *evidence.Case {
+	if p == nil {
+		return nil
 	}
-	return nil, nil
+	return c.With(p.Request)
 }
 
 // notComputed says of every pair why it has no result.
 func (a *asking) notComputed() []result.Computed {
 	why := func() *result.Outcome { return &result.Outcome{Error: a.uncomputable()} }
 	one := result.Computed{File: a.file.file, Request: a.asked.Name, Kind: a.asked.Kind.String()}
-	var all []result.Computed
+	var pairs []result.Computed
 	for _, pair := range a.asked.Pairs() {
 		c := one
 		c.Pair, c.OnLevels, c.AsWritten = &pair, why(), why()
-		all = append(all, c)
+		pairs = append(pairs, c)
 	}
-	if len(all) == 0 {
-		one.OnLevels, one.AsWritten = why(), why()
-		all = append(all, one)
+	if len(pairs) > 0 {
+		return pairs
 	}
-	return all
+	one.OnLevels, one.AsWritten = why(), why()
+	return []result.Computed{one}
 }
 
 // uncomputable says why a request is not computed: the first error about it.
@@ -132,28 +134,17 @@ func (a *asking) uncomputable() string {
 	return "The request cannot be computed: not all of its series were found."
 }
 
-// proven hears one request of a document and proves its candidates.
-func (ed *Edition) proven(ctx context.Context, path string, index int) (*asking, error) {
+// request returns the proven judgement of one request of a document.
+func (ed *Edition) request(ctx context.Context, path string, index int) (*asking, error) {
 	if _, err := ed.asked(path, index); err != nil {
 		return nil, err
 	}
-	h, err := ed.heard(ctx, path, index)
+	if h, kept := ed.proven.get(digest(filepath.Clean(path), strconv.Itoa(everyRequest))); kept {
+		return h.requests[index], nil
+	}
+	h, err := ed.heard(ctx, path, index, withProofs)
 	if err != nil {
 		return nil, err
 	}
 	return h.requests[0], nil
-}
-
-// heard makes the judgement of all requests of a document, or of one.
-func (ed *Edition) heard(ctx context.Context, path string, only int) (*hearing, error) {
-	if err := ctx.Err(); err != nil {
-		return nil, err
-	}
-	r, err := ed.read(ctx, path, withProofs)
-	if err != nil {
-		return nil, err
-	}
-	h := newHearing(r)
-	h.only = only
-	return h, h.run(ctx, withProofs)
 }

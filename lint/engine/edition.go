@@ -19,6 +19,7 @@ type Edition struct {
 	open    map[string]*snapshot
 	disk    *disk
 	labs    memo[*lab] // by folder
+	proven  remembered[*hearing]
 }
 
 // with returns an edition in which the text lies over the file.

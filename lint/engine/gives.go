@@ -2,8 +2,6 @@ package engine
 
 import (
 	"fmt"
-	"math"
-	"strconv"
 
 	"lagwise/lint/result"
 )
@@ -13,42 +11,18 @@ import (
 func gives(o *result.Outcome) string {
 	text := ""
 	if o.Estimate != nil {
-		text = fmt.Sprintf("%s = %s, ", symbolOf(o), rounded(o, *o.Estimate))
+		text = estimate(o) + ", "
 	}
 	if o.P != nil {
-		text += probability(*o.P, o.PBound) + ", "
+		text += result.P(*o.P, o.PBound) + ", "
 	}
 	return text + fmt.Sprintf("n = %d", o.N)
 }
 
-func symbolOf(o *result.Outcome) string {
-	switch o.Coefficient {
-	case "pearson":
-		return "r"
-	case "spearman":
-		return "rho"
-	case "kendall":
-		return "tau"
+func estimate(o *result.Outcome) string {
+	symbols := map[string]string{"pearson": "r", "spearman": "rho", "kendall": "tau"}
+	if symbol, correlation := symbols[o.Coefficient]; correlation {
+		return symbol + " = " + result.Coef(*o.Estimate)
 	}
-	return "slope"
-}
-
-func rounded(o *result.Outcome, v float64) string {
-	if o.Coefficient == "" {
-		return strconv.FormatFloat(v, 'g', 3, 64)
-	}
-	return strconv.FormatFloat(math.Round(v*100)/100+0, 'f', 2, 64)
-}
-
-func probability(p float64, bound result.Bound) string {
-	sign := "="
-	switch {
-	case bound == result.Bound("at-most"):
-		sign = "<="
-	case bound == result.Bound("at-least"):
-		sign = ">="
-	case p < 0.001:
-		return "p < 0.001"
-	}
-	return "p " + sign + " " + strconv.FormatFloat(p, 'g', 2, 64)
+	return "slope = " + result.Number(*o.Estimate)
 }

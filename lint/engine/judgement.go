@@ -3,7 +3,9 @@ package engine
 import (
 	"cmp"
 	"context"
+	"path/filepath"
 	"slices"
+	"strconv"
 	"strings"
 
 	"lagwise/lint"
@@ -48,22 +50,42 @@ func (ed *Edition) Prove(ctx context.Context, path string) (*Judgement, error) {
 }
 
 func (ed *Edition) judge(ctx context.Context, path string, d depth) (*Judgement, error) {
+	h, err := ed.heard(ctx, path, everyRequest, d)
+	if err != nil {
+		return nil, err
+	}
+	s := h.file
+	j := &Judgement{Path: s.path, File: s.file, Root: s.root, Findings: h.findings(), Broken: h.broken(),
+		Complete: h.complete, Proved: h.complete && d == withProofs, Requests: len(h.reading.requests), Series: h.countSeries()}
+	ed.finish(j)
+	return j, nil
+}
+
+// everyRequest asks about every request of a document.
+const everyRequest = -1
+
+// heard lets the rules speak of all requests of a document, or of one. What
+// was proven of an edition is kept with it.
+func (ed *Edition) heard(ctx context.Context, path string, only int, d depth) (*hearing, error) {
 	if err := ctx.Err(); err != nil {
 		return nil, err
+	}
+	k := digest(filepath.Clean(path), strconv.Itoa(only))
+	if h, kept := ed.proven.get(k); kept && d == withProofs {
+		return h, nil
 	}
 	r, err := ed.read(ctx, path, d)
 	if err != nil {
 		return nil, err
 	}
-	h := newHearing(r)
+	h := &hearing{reading: r, only: only, complete: true}
 	if err := h.run(ctx, d); err != nil {
 		return nil, err
 	}
-	s := r.file
-	j := &Judgement{Path: s.path, File: s.file, Root: s.root, Findings: h.findings(), Broken: h.broken(),
-		Complete: h.complete, Proved: h.complete && d == withProofs, Requests: len(r.requests), Series: r.countSeries()}
-	ed.finish(j)
-	return j, nil
+	if d == withProofs && len(h.broken()) == 0 {
+		ed.proven.put(k, h)
+	}
+	return h, nil
 }
 
 // hearing is one judgement while it is made.
@@ -72,11 +94,9 @@ type hearing struct {
 	document said
 	manifest said
 	requests []*asking
-	only     int // the one request that is asked about; -1: all
+	only     int // the one request that is asked about, or all
 	complete bool
 }
-
-func newHearing(r *reading) *hearing { return &hearing{reading: r, only: -1, complete: true} }
 
 // run asks the rules: of the document first, because what makes a request
 // unreadable keeps the statistical rules off it.
@@ -91,7 +111,7 @@ func (h *hearing) run(ctx context.Context, d depth) error {
 		h.hearManifest(ctx, d)
 	}
 	for i := range h.reading.requests {
-		if h.only >= 0 && i != h.only {
+		if h.only != everyRequest && i != h.only {
 			continue
 		}
 		h.requests = append(h.requests, h.asking(ctx, i, d))
@@ -100,8 +120,11 @@ func (h *hearing) run(ctx context.Context, d depth) error {
 	if err == nil && d == withProofs {
 		err = h.proveAll(ctx)
 	}
-	if err == nil && h.complete && h.only < 0 {
+	if err == nil && h.complete && h.only == everyRequest {
 		h.document.add(h.lateDeviations(ctx))
+	}
+	for _, a := range h.requests {
+		a.c = nil // a kept hearing must not keep the data
 	}
 	return err
 }
@@ -144,20 +167,20 @@ func (h *hearing) hearManifest(ctx context.Context, d depth) {
 
 // findings gathers what was said, weighs it and lets the deviations answer.
 func (h *hearing) findings() []finding.Finding {
-	all := slices.Concat(h.document.findings, h.manifest.findings)
-	h.weigh(all, h.devs)
+	said := slices.Concat(h.document.findings, h.manifest.findings)
+	h.weigh(said, h.devs)
 	for _, a := range h.requests {
-		all = append(all, a.attached()...)
+		said = append(said, a.attached()...)
 	}
-	return slices.DeleteFunc(all, func(f finding.Finding) bool { return f.Severity == finding.None })
+	return slices.DeleteFunc(said, func(f finding.Finding) bool { return f.Severity == finding.None })
 }
 
 func (h *hearing) broken() []string {
-	all := slices.Concat(h.document.broken, h.manifest.broken)
+	broken := slices.Concat(h.document.broken, h.manifest.broken)
 	for _, a := range h.requests {
-		all = append(all, a.broken...)
+		broken = append(broken, a.broken...)
 	}
-	return all
+	return broken
 }
 
 // lateDeviations tells of the deviations what only the data show: those given

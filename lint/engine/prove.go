@@ -60,7 +60,7 @@ func (h *hearing) proveAll(ctx context.Context) error {
 // propose asks the procedure for candidates, when something speaks that a
 // rewrite can answer and no deviation does.
 func (a *asking) propose() {
-	if a.c == nil || a.mended() == finding.None && !a.asks() {
+	if !a.computable || a.mended() == finding.None && !a.asks() {
 		return
 	}
 	var candidates []procedure.Candidate
