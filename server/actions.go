@@ -84,7 +84,9 @@ func (s *session) quickFixes(ctx context.Context, ed *engine.Edition, path strin
 				order = append(order, id)
 				made[id] = s.quickFix(ed, judged.Root, rw)
 			}
-			made[id].Diagnostics = append(made[id].Diagnostics, s.diagnostic(ed, judged, f, at))
+			if !slices.Contains(rw.Leaves, f.Rule) {
+				made[id].Diagnostics = append(made[id].Diagnostics, s.diagnostic(ed, judged, f, at))
+			}
 		}
 	}
 	var all []protocol.CommandOrCodeAction
@@ -97,7 +99,7 @@ func (s *session) quickFixes(ctx context.Context, ed *engine.Edition, path strin
 // rewrites returns those of a finding: its own, or those that its request
 // has, proven once for all findings of that request.
 func (s *session) rewrites(ctx context.Context, ed *engine.Edition, path string, f *finding.Finding, proven map[string][]finding.Rewrite) ([]finding.Rewrite, error) {
-	if f.Request == "" || len(f.Rewrites) > 0 {
+	if f.Deviation != nil || f.Request == "" || len(f.Rewrites) > 0 {
 		return f.Rewrites, nil
 	}
 	if known, ok := proven[f.Request]; ok {

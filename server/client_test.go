@@ -8,8 +8,8 @@ import (
 	"io"
 	"log"
 	"net/textproto"
+	"net/url"
 	"strconv"
-	"strings"
 	"sync"
 	"testing"
 	"time"
@@ -24,7 +24,7 @@ const deadline = 20 * time.Second
 type client struct {
 	t   testing.TB
 	in  io.WriteCloser // what the server reads
-	out io.Reader      // what the server writes
+	out *bufio.Reader  // what the server writes
 	log *lockedBuffer
 
 	mu      sync.Mutex
@@ -81,7 +81,7 @@ func connect(t testing.TB, run func(in io.Reader, out io.Writer, logged *lockedB
 func deaf(t testing.TB, run func(in io.Reader, out io.Writer, logged *lockedBuffer) int) *client {
 	serverIn, in := io.Pipe()
 	out, serverOut := io.Pipe()
-	c := &client{t: t, in: in, out: out, log: &lockedBuffer{}, answers: map[string]message{}, exit: make(chan int, 1)}
+	c := &client{t: t, in: in, out: bufio.NewReader(out), log: &lockedBuffer{}, answers: map[string]message{}, exit: make(chan int, 1)}
 	c.changed = sync.NewCond(&c.mu)
 	go func() {
 		code := run(serverIn, serverOut, c.log)
@@ -97,9 +97,8 @@ func deaf(t testing.TB, run func(in io.Reader, out io.Writer, logged *lockedBuff
 }
 
 func (c *client) read() {
-	r := bufio.NewReader(c.out)
 	for {
-		m, err := readMessage(r)
+		m, err := readMessage(c.out)
 		c.mu.Lock()
 		switch {
 		case err != nil:
@@ -279,6 +278,6 @@ type object map[string]any
 
 func position(line, character int) object { return object{"line": line, "character": character} }
 
-func fileURI(path string) string { return "file://" + strings.ReplaceAll(path, " ", "%20") }
+func fileURI(path string) string { return (&url.URL{Scheme: "file", Path: path}).String() }
 
 func textDocument(path string) object { return object{"uri": fileURI(path)} }

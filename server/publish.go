@@ -35,7 +35,7 @@ type publisher struct {
 
 	// Of the sending goroutine alone.
 	running map[string]*run
-	sent    map[string]sent
+	sent    map[string]shown
 }
 
 // judged is what the rules said of one document.
@@ -49,15 +49,9 @@ type judged struct {
 // run is the judging of one version of one document.
 type run struct{ cancel context.CancelFunc }
 
-// sent is what the client was told last of one document.
-type sent struct {
-	version int32
-	items   []byte
-}
-
 func newPublisher(s *session) *publisher {
 	p := &publisher{s: s, wake: make(chan struct{}, 1), dirty: map[string]bool{}, gone: map[string]uri.URI{},
-		running: map[string]*run{}, sent: map[string]sent{}}
+		running: map[string]*run{}, sent: map[string]shown{}}
 	s.start("publish", p.loop)
 	return p
 }
@@ -143,7 +137,7 @@ func (p *publisher) begin(path string) {
 		return
 	}
 	known := ed.Known(path)
-	p.send(ed, known)
+	p.send(ed, p.s.carried(ed, known, p.sent[path]))
 	if known.Complete {
 		p.s.watch.reaches(path, ed.Reaches(path))
 		return
@@ -193,15 +187,17 @@ func (p *publisher) forget(path string, u uri.URI) {
 // send pushes the findings of one version, unless the client has them.
 func (p *publisher) send(ed *engine.Edition, j *engine.Judgement) {
 	version, open := ed.Version(j.Path)
-	if !open {
+	text, err := ed.Text(j.Path)
+	if !open || err != nil {
 		return
 	}
 	items := p.s.diagnostics(ed, j)
-	now := sent{version, encoded(items)}
-	if last, ok := p.sent[j.Path]; ok && last.version == version && bytes.Equal(last.items, now.items) {
+	now := shown{version, text, j.Findings, encoded(items)}
+	last, told := p.sent[j.Path]
+	p.sent[j.Path] = now
+	if told && last.version == version && bytes.Equal(last.items, now.items) {
 		return
 	}
-	p.sent[j.Path] = now
 	p.notify(&protocol.PublishDiagnosticsParams{URI: p.s.uriOf(j.Path), Version: protocol.NewOptional(version), Diagnostics: items})
 }
 

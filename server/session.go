@@ -4,12 +4,14 @@ import (
 	"context"
 	"errors"
 	"log"
+	"path/filepath"
 	"time"
 
 	"go.lsp.dev/protocol"
 	"go.lsp.dev/uri"
 
 	"lagwise/lint/engine"
+	"lagwise/lint/request"
 )
 
 // session is one client's view of the workspace.
@@ -23,7 +25,8 @@ type session struct {
 	logger  *log.Logger
 	clock   clock
 
-	able      abilities // set by initialize, read only afterwards
+	able      abilities       // set by initialize, read only afterwards
+	aboutData map[string]bool // rules that wait for data
 	folders   folders
 	workspace *engine.Workspace // made by initialize
 	documents documents
@@ -35,6 +38,7 @@ type session struct {
 func newSession(base context.Context, stop context.CancelFunc, client protocol.Client, o Options, logger *log.Logger, c clock) *session {
 	s := &session{
 		base: base, stop: stop, client: client, options: o, logger: logger, clock: c,
+		aboutData: rulesAboutData(o.Engine.Options().Rules),
 		documents: documents{open: map[string]*openDocument{}},
 		progress:  progress{cancel: map[string]context.CancelFunc{}},
 	}
@@ -67,16 +71,20 @@ func edition(ctx context.Context) *engine.Edition {
 	return ctx.Value(editionKey{}).(*engine.Edition)
 }
 
-// followed returns the file that a request is about; false when it is no
-// file, or one whose text is not known.
+// followed returns the document that a request is about; false when it is
+// none of ours, or one whose text is not known.
 func (s *session) followed(u uri.URI) (string, bool) {
 	path, ok := pathOf(u)
-	if !ok {
+	if !ok || !ours(path) {
 		return "", false
 	}
 	doc, open := s.documents.get(path)
 	return path, !open || !doc.astray
 }
+
+// ours reports whether a file is a document of one of the kinds that are
+// judged; clients also open others of the same language.
+func ours(path string) bool { return request.DocumentKind(path) != request.NoDoc }
 
 // logFailure logs an error, but not that work was cancelled.
 func (s *session) logFailure(what string, err error) {
@@ -91,7 +99,10 @@ func pathOf(u uri.URI) (string, bool) {
 		return "", false
 	}
 	path := u.FsPath()
-	return path, path != ""
+	if path == "" {
+		return "", false
+	}
+	return filepath.Clean(path), true
 }
 
 // clock is the time a session lives by.

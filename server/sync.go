@@ -116,7 +116,7 @@ func (s *session) open(params []byte) error {
 		return errors.New("a document without a text")
 	}
 	path, ok := parsedPath(d.URI)
-	if !ok {
+	if !ok || !ours(path) {
 		return nil
 	}
 	doc := openDocument{uri: uri.URI(d.URI), text: []byte(*d.Text), version: versionOf(d.Version, 0)}
@@ -142,7 +142,7 @@ func (s *session) change(params []byte) error {
 		return err
 	}
 	path, ok := parsedPath(p.TextDocument.URI)
-	if !ok {
+	if !ok || !ours(path) {
 		return nil
 	}
 	doc, ok := s.documents.get(path)
