@@ -75,27 +75,6 @@ func (a *asking) deviationSpans() []document.Span {
 	return all
 }
 
-// spoken is what was said of one text, with the places it had then.
-type spoken struct {
-	said
-	start   int      // where the request began
-	changed []string // data of deviations that have changed
-}
-
-// recall says what was said of the same text before.
-func (a *asking) recall() {
-	if !a.computable {
-		return
-	}
-	before, known := a.ed.engine.spoken.get(a.textKey())
-	a.complete = known
-	a.said = before.moved(a.file.file, a.asked.At.Start)
-	for _, d := range a.own {
-		d.changed = slices.Contains(before.changed, d.Data)
-	}
-	a.weigh(a.findings, a.own)
-}
-
 // hear asks the rules about the request.
 func (a *asking) hear(ctx context.Context) {
 	if !a.computable {
@@ -126,10 +105,6 @@ func (a *asking) compareData() []string {
 	return changed
 }
 
-func (s said) clone() said {
-	return said{findings: slices.Clone(s.findings), broken: slices.Clone(s.broken)}
-}
-
 // weigh gives every finding its weight and lets deviations answer.
 func (r *reading) weigh(findings []finding.Finding, devs []*deviation) {
 	for i := range findings {
@@ -137,12 +112,6 @@ func (r *reading) weigh(findings []finding.Finding, devs []*deviation) {
 		f.Severity = weighted(r.lab.merged, f.Rule, f.Severity)
 		r.answer(f, devs)
 	}
-}
-
-// textKey digests the text of the request and all documents that bear on it.
-func (a *asking) textKey() key {
-	at := a.asked.At
-	return digest("request", a.file.path, a.asked.Name, string(a.file.text[at.Start:at.End]), a.around)
 }
 
 // inquiryOf is what the rules of request scope are given about the request as
@@ -153,27 +122,4 @@ func (a *asking) inquiryOf(r request.Request, c *evidence.Case) lint.Inquiry {
 	q := a.inquiry()
 	q.Request, q.Case = &asked, c
 	return q
-}
-
-// moved returns what was said, with the places of the file shifted to where
-// the request begins now. The text of the request is the same, so every place
-// in it keeps its distance from its beginning.
-func (s spoken) moved(file string, start int) said {
-	by := start - s.start
-	shift := func(f string, at document.Span) document.Span {
-		if f != file {
-			return at
-		}
-		return document.Span{Start: at.Start + by, End: at.End + by}
-	}
-	out := s.clone()
-	for i := range out.findings {
-		f := &out.findings[i]
-		f.At = shift(f.File, f.At)
-		f.Related = slices.Clone(f.Related)
-		for k := range f.Related {
-			f.Related[k].At = shift(f.Related[k].File, f.Related[k].At)
-		}
-	}
-	return out
 }

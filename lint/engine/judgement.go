@@ -3,6 +3,7 @@ package engine
 import (
 	"cmp"
 	"context"
+	"fmt"
 	"path/filepath"
 	"slices"
 	"strconv"
@@ -94,7 +95,7 @@ type hearing struct {
 	document said
 	manifest said
 	requests []*asking
-	only     int // the one request that is asked about, or all
+	only     int // the one request that is asked about, or everyRequest
 	complete bool
 }
 
@@ -157,8 +158,12 @@ func (h *hearing) hearManifest(ctx context.Context, d depth) {
 	}
 	q := h.inquiry()
 	q.Manifest = h.file.manifest().Manifest
-	q.Reads = h.ed.engine.store.Reads(ctx, q.Manifest, h.ed.guard(h.file.root))
 	q.Idle = h.idle(ctx)
+	if cause := shielded(func() { q.Reads = h.ed.engine.store.Reads(ctx, q.Manifest, h.ed.guard(h.file.root)) }); cause != nil {
+		q.Rule = &lint.Rule{Name: "unreadable-record"}
+		h.manifest = brokenDown(&q, fmt.Sprint(cause))
+		return
+	}
 	h.manifest = h.ask(ctx, lint.OfManifest, q, nil)
 	if ctx.Err() == nil {
 		h.ed.engine.spoken.put(k, spoken{said: h.manifest})

@@ -28,7 +28,12 @@ func (ed *Edition) Screen(ctx context.Context, path string) ([]result.Screened, 
 	default:
 		return nil, fmt.Errorf("%s has no series of its own: screen takes manifests and data files", path)
 	}
-	return result.Screen(ctx, ed.engine.store, m, ed.guard(root), ed.lab(path).settings)
+	var all []result.Screened
+	var err error
+	if cause := shielded(func() { all, err = result.Screen(ctx, ed.engine.store, m, ed.guard(root), ed.lab(path).settings) }); cause != nil {
+		return nil, fmt.Errorf("screening %s broke down: %v; please report it with the documents", m.File, cause)
+	}
+	return all, err
 }
 
 // bare is the manifest of a data file that has none.
