@@ -8,9 +8,7 @@ import (
 )
 
 // compare returns a line for each member of want that got does not equal:
-// |got - want| <= tolerance*|want|, or <= abs where abs is given. Numbers
-// without a whole part of their own (counts, degrees of freedom) follow the
-// same rule.
+// |got - want| <= tolerance*|want|, or <= abs where abs is given.
 func compare(key string, want, got any, tolerance, abs float64) []string {
 	switch w := want.(type) {
 	case float64:

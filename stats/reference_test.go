@@ -61,9 +61,19 @@ func TestReference(t *testing.T) {
 			n.failed++
 		}
 	}
-	text := summary(count)
-	t.Log(text)
-	fmt.Println(text)
+	closing = summary(count)
+	t.Log(closing)
+}
+
+// closing is printed when all tests have run, so that the counts stand last.
+var closing string
+
+func TestMain(m *testing.M) {
+	code := m.Run()
+	if closing != "" {
+		fmt.Println(closing)
+	}
+	os.Exit(code)
 }
 
 func readCases(t *testing.T, dir string) []refCase {
@@ -83,6 +93,11 @@ func readCases(t *testing.T, dir string) []refCase {
 }
 
 func checkCase(t *testing.T, c refCase, run driver) {
+	defer func() { // one broken case must not hide the others
+		if trouble := recover(); trouble != nil {
+			t.Errorf("panic: %v", trouble)
+		}
+	}()
 	var data refData
 	if c.Dataset != "" {
 		var err error

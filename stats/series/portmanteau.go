@@ -3,7 +3,7 @@ package series
 import (
 	"fmt"
 
-	"gonum.org/v1/gonum/stat/distuv"
+	"lagwise/stats/distribution"
 )
 
 // Portmanteau is a joint test of the first autocorrelations. Null hypothesis:
@@ -67,6 +67,6 @@ func portmanteau(what string, r Runs, lags, fitted int, term func(rho, pairs flo
 	if p.DF < 1 {
 		return p, tooShort(what, p.N, 0, fmt.Sprintf("the gaps leave pairs at %d of %d lags", p.Lags, lags))
 	}
-	p.P = distuv.ChiSquared{K: float64(p.DF)}.Survival(p.Statistic)
+	p.P = distribution.ChiSquareUpper(p.Statistic, float64(p.DF))
 	return p, nil
 }

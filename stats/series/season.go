@@ -5,7 +5,8 @@ import (
 	"math"
 
 	"gonum.org/v1/gonum/floats"
-	"gonum.org/v1/gonum/stat/distuv"
+
+	"lagwise/stats/distribution"
 )
 
 // FTest is an F test. Null hypothesis: the terms tested are all zero.
@@ -77,7 +78,7 @@ func SeasonalF(x []float64, at []int, s int) (FTest, error) {
 	const rounding = 0x1p-52
 	within := math.Max(floats.Dot(c, c), n*rounding*rounding)
 	f.F = math.Max(0, total-within) / f.DF1 / (within / f.DF2)
-	f.P = distuv.F{D1: f.DF1, D2: f.DF2}.Survival(f.F)
+	f.P = distribution.FUpper(f.F, f.DF1, f.DF2)
 	return f, nil
 }
 

@@ -5,9 +5,9 @@ import (
 	"math"
 
 	"gonum.org/v1/gonum/floats"
-	"gonum.org/v1/gonum/stat/distuv"
 
 	"lagwise/stats"
+	"lagwise/stats/distribution"
 	"lagwise/stats/series"
 )
 
@@ -64,7 +64,7 @@ func LinearCosine(x []float64, at []float64) (Slope, error) {
 	variance := size / (size - 2) * cosineVariance(e, nu)
 	se := math.Sqrt(size*variance) * rest / square
 	out := Slope{Slope: math.Ldexp(slope, exponent-timeExponent), SE: math.Ldexp(se, exponent-timeExponent), T: slope / se, DF: float64(nu)}
-	out.P = 2 * distuv.StudentsT{Mu: 0, Sigma: 1, Nu: out.DF}.CDF(-math.Abs(out.T))
+	out.P = distribution.TTwoSided(out.T, out.DF)
 	if math.IsInf(out.Slope, 0) || math.IsInf(out.T, 0) || math.IsNaN(out.T) {
 		return Slope{}, &stats.Undefined{What: what, Reason: stats.NotFinite, N: n, Detail: "the slope is beyond the largest floating-point number"}
 	}

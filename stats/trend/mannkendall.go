@@ -6,9 +6,8 @@ package trend
 import (
 	"math"
 
-	"gonum.org/v1/gonum/stat/distuv"
-
 	"lagwise/stats"
+	"lagwise/stats/distribution"
 )
 
 // MannKendallResult is a test of a monotone trend.
@@ -60,7 +59,7 @@ func normal(s, variance float64) (z, p float64) {
 	case s < 0:
 		z = (s + 1) / math.Sqrt(variance)
 	}
-	return z, math.Min(1, 2*distuv.UnitNormal.CDF(-math.Abs(z)))
+	return z, distribution.NormalTwoSided(z)
 }
 
 // pairCount is what the pairs of a sequence do.

@@ -5,9 +5,8 @@ import (
 	"math"
 	"slices"
 
-	"gonum.org/v1/gonum/stat/distuv"
-
 	"lagwise/stats"
+	"lagwise/stats/distribution"
 	"lagwise/stats/series"
 )
 
@@ -59,7 +58,7 @@ func TheilSen(t, x []float64, level float64) (Sen, error) {
 		return Sen{}, tooShort(what, len(x), 0, "all values are at one time")
 	}
 	pairs := float64(s.total)
-	c := distuv.UnitNormal.Quantile((1+level)/2) * math.Sqrt(variance)
+	c := distribution.NormalQuantile((1+level)/2) * math.Sqrt(variance)
 	out := Sen{Pairs: s.total}
 	out.RankLower = int64(math.Max(1, math.RoundToEven((pairs-c)/2)))
 	out.RankUpper = int64(math.Min(pairs, math.RoundToEven((pairs+c)/2)+1))

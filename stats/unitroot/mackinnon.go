@@ -4,7 +4,7 @@ import (
 	"fmt"
 	"math"
 
-	"gonum.org/v1/gonum/stat/distuv"
+	"lagwise/stats/distribution"
 )
 
 // MacKinnonP is the asymptotic p-value of a Dickey-Fuller tau (n = 1) or of an
@@ -29,7 +29,7 @@ func MacKinnonP(tau float64, terms Terms, n int) float64 {
 	default:
 		z = s.large[0] + tau*(s.large[1]+tau*(s.large[2]+tau*s.large[3]))
 	}
-	return distuv.UnitNormal.CDF(z)
+	return distribution.NormalUpper(-z)
 }
 
 // MacKinnonCritical are the 1, 5 and 10 % critical values of tau for n series
