@@ -84,6 +84,8 @@ func (c *checker) asked(e entry) *Asked {
 		At:     document.Span{Start: head.Start, End: max(head.End, lastOf(e.node))},
 		Keys:   r.places(),
 		Names:  map[string][]document.Span{},
+		tree:   c.tree,
+		table:  e.node,
 	}
 	a.Request = Request{
 		Kind:       e.kind,

@@ -3,6 +3,7 @@ package request
 import (
 	"fmt"
 	"slices"
+	"sort"
 
 	"lagwise/lint/document"
 )
@@ -163,12 +164,9 @@ func (c *checker) broken(n *document.Node) bool {
 			end = c.headers[i]
 		}
 	}
-	for _, p := range c.tree.Problems {
-		if p.At.Start >= start && p.At.Start <= end {
-			return true
-		}
-	}
-	return false
+	problems := c.tree.Problems // by place
+	i := sort.Search(len(problems), func(i int) bool { return problems[i].At.Start >= start })
+	return i < len(problems) && problems[i].At.Start <= end
 }
 
 func capital(s string) string {

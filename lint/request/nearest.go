@@ -8,13 +8,13 @@ import (
 // Nearest returns the candidate that is nearest to a word by the fewest
 // insertions, deletions, substitutions and swaps of neighbours, case apart;
 // the earlier of equals, "" when none is near: more than a third of the
-// longer word, or more than two letters of a short one, would have to change.
+// longer word, or more than one letter of a short one, would have to change.
 func Nearest(word string, candidates []string) string {
 	best, least := "", -1
 	for _, c := range candidates {
 		d := distance([]rune(strings.ToLower(word)), []rune(strings.ToLower(c)))
 		longer := max(len(word), len(c))
-		if d > max(2, longer/3) || d >= min(len(word), len(c)) {
+		if d > max(1, longer/3) || d >= min(len(word), len(c)) {
 			continue
 		}
 		if least < 0 || d < least {

@@ -141,6 +141,8 @@ type Asked struct {
 	madeUp bool     // the name is not written
 	faulty bool     // the request has problems, or its document cannot be read
 	under  []string // keys from the root of the tree to the table it was bound in
+	tree   *document.Tree
+	table  *document.Node // of the request, in tree
 }
 
 // Key returns the span of the value of a key when it is written, else of the

@@ -9,7 +9,7 @@ import (
 
 // Rewrite returns the fewest edits of the text that turn a request as it is
 // written into another; all other bytes, comments among them, stay. asked must
-// be bound from t. What is at its default is taken out if it is written, and
+// be bound from t, or from another reading of the same text. What is at its default is taken out if it is written, and
 // not written if it is not; a list stays a list and a bare number or date one.
 // A new key takes the line of a key that goes, else it follows the table's
 // last statement. estimator = "gls" is left to errors, which implies it. A
@@ -21,7 +21,10 @@ import (
 // would have to change its kind, or what is wrong in the request would come
 // to bear.
 func Rewrite(t *document.Tree, asked *Asked, to *Request) []document.Edit {
-	table := tableAt(t.Root, asked.Header)
+	table := asked.table
+	if asked.tree != t { // another reading of the same text
+		table = tableAt(t.Root, asked.Header)
+	}
 	if table == nil {
 		return nil
 	}

@@ -105,5 +105,5 @@ var deviationKeys = []Key{
 	{Table: "deviation", Name: "accepted-by", Types: Text, Form: Name, Meaning: "Who accepted it.", Example: `accepted-by = "TM"`},
 	{Table: "deviation", Name: "until", Types: Text | Date, Form: Day, Meaning: "The last day on which it holds.", Example: `until = 2027-06-30`},
 	{Table: "deviation", Name: "data", Types: Text, Form: DataDigest, Meaning: "The digest of the data it was given for; it ends when they change.", Example: `data = "sha256:2f5d"`},
-	{Table: "deviation", Name: "pair", Types: List, Form: SeriesName, Default: "every pair", Meaning: "The one pair of series that it is about.", Example: `pair = ["eelgrass", "boats"]`},
+	{Table: "deviation", Name: "pair", Types: Text | List, Form: SeriesName, Default: "every pair", Meaning: "The one pair of series that it is about.", Example: `pair = ["eelgrass", "boats"]`},
 }

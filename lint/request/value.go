@@ -90,7 +90,7 @@ func typeWords(k Key) string {
 		}
 	}
 	switch {
-	case k.Types == List, k.Form == SeriesName && k.Types&List != 0:
+	case k.Form == SeriesName && k.Types&List != 0:
 		return "a list of series"
 	case k.Types&List != 0:
 		words = append(words, "a list of them")
