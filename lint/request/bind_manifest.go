@@ -186,7 +186,10 @@ func (c *checker) recordOf(s *Series, r reader, records []*Record) *Record {
 	n := r.node("record")
 	switch {
 	case len(all) == 0:
-		return nil // told by what is absent: there is nothing to name
+		if c.tree.Valid() {
+			c.add(Problem{Rule: "absent-field", At: s.Header,
+				Message: fmt.Sprintf("The series %s has no record: write [record.NAME] with the file that holds it.", shown(s.Name))})
+		}
 	case n != nil:
 		c.wrongWord(n, s.Record, all, fmt.Sprintf("No record of this manifest is named %s; there are %s.", shown(s.Record), firstOf(all)))
 	case r.n.Get("record") == nil && !c.broken(r.n):

@@ -40,6 +40,7 @@ func TestProblems(t *testing.T) {
 		{"series", "[record.weir]\ncomment = \"#\"\n", "absent-field", "[record.weir]", "", "file"},
 		{"series", "record.weir.comment = \"#\"\n", "absent-field", "weir", "", "file"},
 		{"series", weir + "[record.b]\nfile = \"b.csv\"\n[series.x]\n", "absent-field", "[series.x]", "", "which record"},
+		{"series", "[series.x]\n", "absent-field", "[series.x]", "", "[record.NAME]"},
 
 		// wrong type
 		{"analysis", pair + "planned = \"yes\"\n", "wrong-value", `"yes"`, "", "true or false"},
@@ -65,6 +66,9 @@ func TestProblems(t *testing.T) {
 		{"analysis", pair + "every = \"P0Y\"\n", "wrong-value", `"P0Y"`, "", "has none"},
 		{"analysis", pair + "year-starts = \"13-01\"\n", "wrong-value", `"13-01"`, "", "month and day"},
 		{"analysis", pair + "least-share = 1.5\n", "wrong-value", "1.5", "", "0 to 1"},
+		{"analysis", pair + "tolerance = -1\n", "wrong-value", "-1", "", "0 or more"},
+		{"series", weir + "[series.a]\nseason = 1\n", "wrong-value", "1", "", "2 or more"},
+		{"series", weir + "[series.a]\nmeasurement-sd = -1\n", "wrong-value", "-1", "", "from 0 up"},
 		{"analysis", pair + "least-share = nan\n", "wrong-value", "nan", "", "finite"},
 		{"analysis", pair + "replicates = 50\n", "wrong-value", "50", "", "100 to 100000"},
 		{"analysis", pair + "groups = \"witin\"\n", "wrong-value", `"witin"`, `"within"`, ""},

@@ -279,6 +279,17 @@ func TestRewriteThatCannotBeWritten(t *testing.T) {
 	}
 }
 
+func TestRewriteOfAnotherReadingOfTheText(t *testing.T) {
+	text := []byte("[[correlation]]\nbetween = [\"c\", \"d\"]\n[[correlation]]\nbetween = [\"a\", \"b\"]\n")
+	a := bindAnalysis(t, string(text))
+	to := a.Requests[1].Request
+	to.Coefficient = "kendall"
+	out, err := document.Apply(text, Rewrite(document.Parse(text), a.Requests[1], &to))
+	if want := string(text) + "coefficient = \"kendall\"\n"; err != nil || string(out) != want {
+		t.Errorf("%v\n%s", err, out)
+	}
+}
+
 func TestRewriteUnderATable(t *testing.T) {
 	text := "[tool.lagwise]\ntitle = \"x\"\n[[tool.lagwise.correlation]]\nbetween = [\"a\", \"b\"]\n"
 	tree := document.Parse([]byte(text))
