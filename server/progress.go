@@ -30,7 +30,9 @@ func working[T any](ctx context.Context, s *session, token protocol.ProgressToke
 	}
 	done := make(chan struct{})
 	defer close(done)
-	stop := s.clock.after(patience, func() { s.start("progress", func() { s.tell(token, title, cancel, done) }) })
+	stop := s.after(patience, "progress", func() {
+		s.start("progress", func() { s.tell(token, title, cancel, done) })
+	})
 	defer stop()
 	return f(ctx)
 }

@@ -26,8 +26,8 @@ type publisher struct {
 	s    *session
 	wake chan struct{}
 
-	mu        sync.Mutex // guards everything below
-	dirty     map[string]bool
+	mu        sync.Mutex      // guards everything below
+	dirty     map[string]bool // whether to judge although all is remembered
 	judged    []judged
 	gone      map[string]uri.URI
 	unproved  func() bool // stops the timer of the proofs
@@ -59,19 +59,21 @@ func newPublisher(s *session) *publisher {
 // edited says that a document was opened or changed by a person. A manifest
 // or conventions may bear on any other document.
 func (p *publisher) edited(path string) {
-	paths := []string{path}
 	if bearsOnOthers(path) {
-		paths = p.s.documents.paths()
+		p.again(p.s.documents.paths()...)
+	} else {
+		p.mark(false, path)
 	}
-	p.again(paths...)
 	p.rest()
 }
 
-// again has documents judged again.
-func (p *publisher) again(paths ...string) {
+// again has documents judged again although their texts may be as they were.
+func (p *publisher) again(paths ...string) { p.mark(true, paths...) }
+
+func (p *publisher) mark(judge bool, paths ...string) {
 	p.mu.Lock()
 	for _, path := range paths {
-		p.dirty[path] = true
+		p.dirty[path] = p.dirty[path] || judge
 	}
 	p.mu.Unlock()
 	p.signal()
@@ -116,13 +118,14 @@ func (p *publisher) loop() {
 			p.finish(j)
 		}
 		for _, path := range slices.Sorted(maps.Keys(dirty)) {
-			p.begin(path)
+			p.begin(path, dirty[path])
 		}
 	}
 }
 
-// begin tells what is known of the present version, and has the rest judged.
-func (p *publisher) begin(path string) {
+// begin tells what is known of the present version, and has the rest judged,
+// or all of it.
+func (p *publisher) begin(path string, all bool) {
 	if old := p.running[path]; old != nil {
 		old.cancel()
 		delete(p.running, path)
@@ -138,7 +141,7 @@ func (p *publisher) begin(path string) {
 	}
 	known := ed.Known(path)
 	p.send(ed, p.s.carried(ed, known, p.sent[path]))
-	if known.Complete {
+	if known.Complete && !all {
 		p.s.watch.reaches(path, ed.Reaches(path))
 		return
 	}
@@ -214,7 +217,7 @@ func (p *publisher) rest() {
 	p.still()
 	ctx, cancel := context.WithCancel(p.s.base)
 	p.stopProof = cancel
-	p.unproved = p.s.clock.after(quiet, func() { p.s.start("prove", func() { p.prove(ctx) }) })
+	p.unproved = p.s.after(quiet, "prove", func() { p.prove(ctx) })
 }
 
 // still ends a wait or the proofs under way; the caller holds the mutex.
@@ -249,20 +252,22 @@ func (p *publisher) prove(ctx context.Context) {
 		}
 		if !bytes.Equal(before, encoded(p.s.diagnostics(ed, found))) {
 			changed = true
-			p.again(path)
+			p.mark(false, path)
 		}
 	}
-	if changed && ctx.Err() == nil {
-		p.refresh(ctx)
+	if changed {
+		p.refresh()
 	}
 }
 
 // refresh asks a client that pulls to pull again.
-func (p *publisher) refresh(ctx context.Context) {
+func (p *publisher) refresh() {
 	if !p.s.able.pull || !p.s.able.refreshPull {
 		return
 	}
-	if err := p.s.client.DiagnosticRefresh(ctx); err != nil {
-		p.s.logFailure("refresh", err)
-	}
+	p.s.start("refresh", func() {
+		if err := p.s.client.DiagnosticRefresh(p.s.base); err != nil {
+			p.s.logFailure("refresh", err)
+		}
+	})
 }

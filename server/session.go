@@ -52,11 +52,28 @@ func newSession(base context.Context, stop context.CancelFunc, client protocol.C
 
 // start runs f beside the read loop; a panic in it is logged and goes no
 // further.
-func (s *session) start(what string, f func()) {
-	go func() {
-		defer (&transport{logger: s.logger}).recovered(what)
+func (s *session) start(what string, f func()) { go s.shielded(what, f) }
+
+func (s *session) shielded(what string, f func()) {
+	defer recovered(s.logger, what)
+	f()
+}
+
+// after runs f when d has passed; stop takes it back.
+func (s *session) after(d time.Duration, what string, f func()) (stop func() bool) {
+	return s.clock.after(d, func() {
+		if s.base.Err() == nil {
+			s.shielded(what, f)
+		}
+	})
+}
+
+// repeatedly runs f every d until the session ends.
+func (s *session) repeatedly(d time.Duration, what string, f func()) {
+	s.after(d, what, func() {
+		defer s.repeatedly(d, what, f)
 		f()
-	}()
+	})
 }
 
 // editionKey is where a request's context keeps its edition.
@@ -111,17 +128,3 @@ type clock struct {
 }
 
 var realClock = clock{after: func(d time.Duration, f func()) func() bool { return time.AfterFunc(d, f).Stop }}
-
-// repeatedly calls f every d until the session ends.
-func (s *session) repeatedly(d time.Duration, what string, f func()) {
-	s.clock.after(d, func() {
-		if s.base.Err() != nil {
-			return
-		}
-		func() {
-			defer (&transport{logger: s.logger}).recovered(what)
-			f()
-		}()
-		s.repeatedly(d, what, f)
-	})
-}

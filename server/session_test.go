@@ -7,11 +7,14 @@ import (
 	"io"
 	"os"
 	"path/filepath"
+	"runtime"
 	"slices"
 	"strings"
 	"sync"
 	"testing"
 	"time"
+
+	"go.lsp.dev/protocol"
 
 	"lagwise/lint"
 	"lagwise/lint/document"
@@ -71,6 +74,22 @@ func (b *byHand) drop(timer *handTimer) bool {
 	return i >= 0
 }
 
+// await waits until something is to be done after d.
+func (b *byHand) await(t testing.TB, d time.Duration) {
+	t.Helper()
+	for until := time.Now().Add(deadline); ; runtime.Gosched() {
+		b.mu.Lock()
+		found := slices.ContainsFunc(b.timers, func(timer *handTimer) bool { return timer.at == b.now+d })
+		b.mu.Unlock()
+		if found {
+			return
+		}
+		if time.Now().After(until) {
+			t.Fatalf("nothing is to be done after %v", d)
+		}
+	}
+}
+
 // pass lets time pass and runs what is due, in order.
 func (b *byHand) pass(d time.Duration) {
 	b.mu.Lock()
@@ -98,10 +117,22 @@ func (b *byHand) pass(d time.Duration) {
 
 // serving connects a client to a session with these rules.
 func serving(t testing.TB, c clock, rules ...lint.Rule) *client {
+	connected, _ := servingSession(t, c, rules...)
+	return connected
+}
+
+// servingSession also gives the session, once it is initialized.
+func servingSession(t testing.TB, c clock, rules ...lint.Rule) (*client, func() *session) {
 	e := engine.New(engine.Options{Rules: rules})
-	return connect(t, func(in io.Reader, out io.Writer, logged *lockedBuffer) int {
-		return serve(context.Background(), in, out, Options{Engine: e, Version: "0", Log: logged}, c)
+	made := make(chan *session, 1)
+	connected := connect(t, func(in io.Reader, out io.Writer, logged *lockedBuffer) int {
+		return converse(context.Background(), in, out, logged.logger(), func(base context.Context, stop context.CancelFunc, client protocol.Client) endpoint {
+			s := newSession(base, stop, client, Options{Engine: e, Version: "0"}, logged.logger(), c)
+			made <- s
+			return s
+		})
 	})
+	return connected, func() *session { return <-made }
 }
 
 // begin initializes a session in a new folder with files, and returns it.

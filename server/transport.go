@@ -109,7 +109,7 @@ func (t *transport) handle(ctx context.Context, req *jsonrpc2.Request) (any, err
 // notified handles a notification to its end. Whatever it does wrong is
 // logged: an error that reached the library would end the session.
 func (t *transport) notified(ctx context.Context, req *jsonrpc2.Request) {
-	defer t.recovered(req.Method())
+	defer recovered(t.logger, req.Method())
 	var err error
 	switch m := req.Method(); {
 	case m == protocol.MethodExit:
@@ -144,9 +144,9 @@ func (t *transport) guarded(ctx context.Context, req *jsonrpc2.Request) (res any
 }
 
 // recovered is deferred around work that must not take the session with it.
-func (t *transport) recovered(what string) {
+func recovered(logger *log.Logger, what string) {
 	if p := recover(); p != nil {
-		t.logger.Printf("%s: panic: %v\n%s", what, p, debug.Stack())
+		logger.Printf("%s: panic: %v\n%s", what, p, debug.Stack())
 	}
 }
 

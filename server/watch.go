@@ -127,7 +127,7 @@ func (w *watch) changed(path string) {
 	first := len(w.pending) == 0
 	w.pending[path] = true
 	if first {
-		w.s.clock.after(burst, func() { w.s.start("files", w.settle) })
+		w.s.after(burst, "files", w.settle)
 	}
 }
 
@@ -138,8 +138,7 @@ func (w *watch) settle() {
 	clear(w.pending)
 	w.mu.Unlock()
 	w.s.workspace.Touch(paths...)
-	open := w.s.documents.paths()
-	w.s.publisher.again(open...)
+	w.s.publisher.again(w.s.documents.paths()...)
 	w.s.publisher.rest()
-	w.s.publisher.refresh(w.s.base)
+	w.s.publisher.refresh()
 }
