@@ -79,13 +79,12 @@ func (c pairCount) variance() float64 {
 	return (n*(n-1)*(2*n+5) - c.ties) / 18
 }
 
-// countPairs sorts a copy of x by merging and counts the pairs out of order on
-// the way (Knight 1966).
+// countPairs counts by sorting: the falling pairs are those out of order.
 func countPairs(x []float64) pairCount {
 	n := int64(len(x))
 	c := pairCount{n: len(x), pairs: n * (n - 1) / 2}
-	sorted := append([]float64(nil), x...)
-	c.falling = sortCounting(sorted, make([]float64, len(x)))
+	sorted := keys(x)
+	c.falling = sortCounting(sorted, make([]uint64, len(x)))
 	for i := 0; i < len(sorted); {
 		j := i + 1
 		for j < len(sorted) && sorted[j] == sorted[i] {
@@ -97,56 +96,4 @@ func countPairs(x []float64) pairCount {
 		i = j
 	}
 	return c
-}
-
-// sortCounting sorts x and returns the number of pairs i < j with x[i] > x[j].
-func sortCounting(x, spare []float64) int64 {
-	const run = 16
-	var falling int64
-	for from := 0; from < len(x); from += run {
-		falling += insertionCount(x[from:min(from+run, len(x))])
-	}
-	a, b := x, spare
-	for width := run; width < len(x); width *= 2 {
-		for from := 0; from < len(x); from += 2 * width {
-			middle, to := min(from+width, len(x)), min(from+2*width, len(x))
-			falling += mergeCount(b[from:to], a[from:middle], a[middle:to])
-		}
-		a, b = b, a
-	}
-	if len(x) > 0 && &a[0] != &x[0] {
-		copy(x, a)
-	}
-	return falling
-}
-
-func insertionCount(x []float64) int64 {
-	var falling int64
-	for i := 1; i < len(x); i++ {
-		v := x[i]
-		j := i
-		for j > 0 && x[j-1] > v {
-			x[j] = x[j-1]
-			j--
-		}
-		x[j] = v
-		falling += int64(i - j)
-	}
-	return falling
-}
-
-func mergeCount(out, left, right []float64) int64 {
-	var falling int64
-	i, j := 0, 0
-	for k := range out {
-		if j == len(right) || i < len(left) && left[i] <= right[j] {
-			out[k] = left[i]
-			i++
-		} else {
-			out[k] = right[j]
-			j++
-			falling += int64(len(left) - i)
-		}
-	}
-	return falling
 }

@@ -13,7 +13,7 @@ type slopes struct {
 }
 
 // few is the number of slopes that are simply written down.
-const few = 2_000_000
+const few = 20_000
 
 func newSlopes(t, x []float64) *slopes {
 	order := make([]int, len(t))
@@ -44,25 +44,41 @@ func newSlopes(t, x []float64) *slopes {
 	return s
 }
 
-// at are the slopes of the given ranks (from 1).
+// at are the slopes of the given ranks (from 1, rising).
 func (s *slopes) at(ranks ...int64) []float64 {
 	out := make([]float64, len(ranks))
+	var p part
 	if s.total <= few {
-		all := s.all()
-		slices.Sort(all)
-		for i, r := range ranks {
-			out[i] = all[r-1]
-		}
-		return out
+		p.values = s.all()
+		slices.Sort(p.values)
 	}
 	for i, r := range ranks {
-		if i > 0 && r == ranks[i-1] {
-			out[i] = out[i-1]
-			continue
+		if !p.holds(r) {
+			p = s.enclose(r)
 		}
-		out[i] = s.enclose(r)
+		out[i] = p.at(r)
 	}
 	return out
+}
+
+// part is a stretch of the sorted slopes.
+type part struct {
+	below  int64 // slopes before it
+	values []float64
+	// one value tied more often than is written down
+	tied  int64
+	value float64
+}
+
+func (p part) holds(rank int64) bool {
+	return rank > p.below && rank <= p.below+p.tied+int64(len(p.values))
+}
+
+func (p part) at(rank int64) float64 {
+	if p.tied > 0 {
+		return p.value
+	}
+	return p.values[rank-p.below-1]
 }
 
 func (s *slopes) slope(i, j int) float64 { return (s.x[j] - s.x[i]) / (s.t[j] - s.t[i]) }
@@ -79,33 +95,47 @@ func (s *slopes) all() []float64 {
 	return out
 }
 
-// enclose finds the slope of a rank by halving an interval of slopes: the pairs
-// with a slope up to b are those that x - b t does not bring up, counted by
-// sorting. When few pairs are left in the interval they are written down.
-func (s *slopes) enclose(rank int64) float64 {
+// enclose finds the part that holds a rank by halving an interval of slopes:
+// the pairs with a slope up to b are those that do not rise once b t is taken
+// off, counted by sorting. When few pairs are left they are written down. Halving
+// goes by the bits of the numbers, so that it ends whatever their sizes.
+func (s *slopes) enclose(rank int64) part {
+	negative, upToZero := s.negative(), s.upTo(0)
+	if rank > negative && rank <= upToZero {
+		return part{below: negative, tied: upToZero - negative}
+	}
 	low, high := s.bounds()
-	var below int64 // slopes at or under low
-	above := s.total
-	for above-below > int64(8*len(s.t)) {
-		middle := low + (high-low)/2
-		if middle <= low || middle >= high {
-			return middle // one value, tied more often than can be written down
+	below, above := int64(0), s.total // slopes up to low, up to high
+	if rank <= negative {
+		high, above = 0, negative
+	} else {
+		low, below = 0, upToZero
+	}
+	for above-below > int64(4*len(s.t)) {
+		middle := halfway(low, high)
+		if middle == low || middle == high {
+			return part{below: below, tied: above - below, value: high}
 		}
 		if c := s.upTo(middle); c < rank {
 			low, below = middle, c
 		} else {
 			high, above = middle, c
 		}
-		if high-low <= 0x1p-50*math.Max(math.Abs(low), math.Abs(high)) {
-			break
-		}
 	}
-	inside := s.between(low, high, above-below)
-	if k := rank - below; k >= 1 && k <= int64(len(inside)) {
-		slices.Sort(inside)
-		return inside[k-1]
+	p := part{below: below, values: s.between(low, high)}
+	slices.Sort(p.values)
+	if !p.holds(rank) { // a slope rounded across the end of the interval
+		return part{below: below, tied: above - below, value: high}
 	}
-	return low + (high-low)/2
+	return p
+}
+
+// halfway is the number in the middle, by bits, of two that differ in no sign.
+func halfway(low, high float64) float64 {
+	if high <= 0 {
+		return -halfway(-high, -low)
+	}
+	return math.Float64frombits((math.Float64bits(low+0) + math.Float64bits(high)) / 2)
 }
 
 // bounds is an interval with every slope inside, its lower end below all.
@@ -135,8 +165,25 @@ func (s *slopes) bounds() (low, high float64) {
 func (s *slopes) upTo(b float64) int64 {
 	rest := s.less(b)
 	slices.Reverse(rest) // rising pairs now fall
-	rising := sortCounting(rest, make([]float64, len(rest)))
-	return s.total - rising
+	return s.total - sortCounting(keys(rest), make([]uint64, len(rest)))
+}
+
+// negative is the number of slopes under zero.
+func (s *slopes) negative() int64 {
+	down := make([]float64, len(s.x))
+	for i, v := range s.x {
+		down[len(down)-1-i] = -v
+	}
+	// At one time the values fell; turned over they must again.
+	for i := 0; i < len(s.t); {
+		j := i + 1
+		for j < len(s.t) && s.t[j] == s.t[i] {
+			j++
+		}
+		slices.Reverse(down[len(down)-j : len(down)-i])
+		i = j
+	}
+	return sortCounting(keys(down), make([]uint64, len(down)))
 }
 
 func (s *slopes) less(b float64) []float64 {
@@ -148,11 +195,8 @@ func (s *slopes) less(b float64) []float64 {
 }
 
 // between are the slopes above low and up to high: the pairs that rise once low
-// is taken off and no longer once high is. about is their number.
-func (s *slopes) between(low, high float64, about int64) []float64 {
-	if about > int64(64*len(s.t)) {
-		return nil // ties of one slope
-	}
+// is taken off and no longer once high is.
+func (s *slopes) between(low, high float64) []float64 {
 	under, over := s.less(low), s.less(high)
 	order := make([]int, len(under)) // by rising x - low t
 	for i := range order {

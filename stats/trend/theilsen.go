@@ -27,8 +27,9 @@ type Sen struct {
 // Var S then has the ties in time as well. The interval supposes independent
 // values.
 //
-// Exact at every length: below 2,000 values all slopes are selected from, above
-// the ranks are enclosed by counting slopes in O(n log n) first.
+// Exact at every length (a slope tied in thousands of pairs to the last bit but
+// one): up to 200 values all slopes are sorted, above that a rank is enclosed first
+// by counting slopes, O(n log n) each time.
 //
 // The error is *stats.Undefined: NotFinite; TooShort below three values or when
 // no pair differs in time; Constant when all values are equal. It panics when

@@ -141,7 +141,8 @@ func (s *sample) choose(rule LagRule, top int) (choice, error) {
 	if err != nil {
 		return choice{}, err
 	}
-	if last.rss <= float64(last.rows)*rounding*rounding {
+	// A residual of that size is the rounding of the fit.
+	if last.rss <= math.Max(float64(last.rows)*rounding*rounding, 1e-24*last.level*last.level) {
 		return choice{}, &stats.Undefined{What: adfName, Reason: stats.Singular, N: len(s.z),
 			Detail: "the values before determine every value exactly"}
 	}
