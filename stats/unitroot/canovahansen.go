@@ -32,8 +32,8 @@ const mostHarmonics = 12
 // season longer than 25 steps the first 12 harmonics), e the residuals of x on a
 // constant and f, W the Bartlett long-run covariance of f e with bandwidth
 // round(s (n/100)^(1/4)) (common practice). The law of L is that of the integral
-// of the squared length of a DF-dimensional Brownian bridge; P and the critical
-// value are computed from its characteristic function.
+// of the squared length of a DF-dimensional Brownian bridge; P is
+// computed from its characteristic function.
 //
 // x must be stationary but for its season. at holds the step positions, strictly
 // increasing; products never cross a gap. The error is *stats.Undefined:
@@ -79,8 +79,8 @@ func CanovaHansen(x []float64, at []int, s int) (CanovaHansenResult, error) {
 	}
 	out := CanovaHansenResult{DF: scores.RawMatrix().Cols, Statistic: nyblom(scores, &w)}
 	out.P = bridgeTail(out.Statistic, out.DF)
-	out.Critical5 = bridgeQuantile(0.05, out.DF)
-	out.Rejects = out.P < 0.05
+	out.Critical5 = bridge5[out.DF-1]
+	out.Rejects = out.Statistic > out.Critical5
 	return out, nil
 }
 
