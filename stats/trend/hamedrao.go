@@ -17,8 +17,8 @@ import (
 //
 // r are the autocorrelations (divisor n) of the average ranks of x less its
 // Theil-Sen line over 1..n, at lags 1..maxLag; with onlySignificant only those
-// beyond 1.96/sqrt(n). Residuals closer than 1e-11 of the largest value count as
-// tied: the pairs that define the median slope are tied exactly, but for rounding.
+// beyond 1.96/sqrt(n). Residuals closer than 1e-11 of the largest deviation count
+// as tied: the pairs that define the median slope are tied exactly, but for rounding.
 // The values are taken as evenly spaced.
 //
 // The error is *stats.Undefined: as for MannKendall; TooShort below four values or
@@ -68,6 +68,10 @@ func residualRankAutocorrelations(x []float64, maxLag int) ([]float64, error) {
 	}
 	scaled, _, err := series.Scaled("Theil-Sen slope", x)
 	if err != nil {
+		return nil, err
+	}
+	series.Centre(scaled) // so that an offset does not widen the ties
+	if scaled, _, err = series.Scaled("Theil-Sen slope", scaled); err != nil {
 		return nil, err
 	}
 	slope, err := medianSlope(t, scaled)
