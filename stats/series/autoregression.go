@@ -124,11 +124,12 @@ func (a *autoregression) project(e equation) int {
 		at[r] = a.at[i]
 		line[r] = float64(a.at[i] - a.at[0])
 	}
-	season := max(1, a.s)
-	removed := demeanByPhase(line, at, season)
+	season := newPhases(at, max(1, a.s))
+	removed := len(season.count)
+	season.demean(line)
 	square := floats.Dot(line, line)
 	for _, column := range e.columns {
-		demeanByPhase(column, at, season)
+		season.demean(column)
 		if a.trend && square > 0 {
 			floats.AddScaled(column, -floats.Dot(line, column)/square, line)
 		}

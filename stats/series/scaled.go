@@ -24,13 +24,19 @@ func Scaled(what string, x []float64) (scaled []float64, exponent int, err error
 			return nil, 0, &stats.Undefined{What: what, Reason: stats.NotFinite, N: len(x),
 				Detail: fmt.Sprintf("value %d is %v", i+1, v)}
 		}
-		top = max(top, a)
+		if a > top { // max would look for NaN again
+			top = a
+		}
 	}
 	scaled = make([]float64, len(x))
 	if top == 0 {
 		return scaled, 0, nil
 	}
 	_, exponent = math.Frexp(top)
+	if -1000 < exponent && exponent < 1000 {
+		floats.ScaleTo(scaled, math.Ldexp(1, -exponent), x)
+		return scaled, exponent, nil
+	}
 	// Two factors, because 2^1074 alone is beyond the range.
 	half := -exponent / 2
 	floats.ScaleTo(scaled, math.Ldexp(1, half), x)

@@ -69,7 +69,9 @@ func SeasonalF(x []float64, at []int, s int) (FTest, error) {
 	}
 	Centre(c)
 	total := floats.Dot(c, c)
-	groups := demeanByPhase(c, at, s)
+	season := newPhases(at, s)
+	season.demean(c)
+	groups := len(season.count)
 	n := float64(len(c))
 	f := FTest{DF1: float64(groups - 1), DF2: n - float64(groups)}
 	if groups < 2 || f.DF2 < 1 {
@@ -82,40 +84,44 @@ func SeasonalF(x []float64, at []int, s int) (FTest, error) {
 	return f, nil
 }
 
-// demeanByPhase takes the mean of each phase off its values, in place, and
-// returns the number of phases that occur.
-func demeanByPhase(x []float64, at []int, s int) int {
-	group, groups := phaseGroups(at, s)
-	sum := make([]float64, groups)
-	count := make([]float64, groups)
-	for i, v := range x {
-		sum[group[i]] += v
-		count[group[i]]++
-	}
-	for i := range x {
-		x[i] -= sum[group[i]] / count[group[i]]
-	}
-	return groups
+// phases numbers the phases of a season that occur, from 0.
+type phases struct {
+	of    []int // of each value
+	count []float64
 }
 
-// phaseGroups numbers the phases that occur from 0, and says which each
-// position has.
-func phaseGroups(at []int, s int) (group []int, groups int) {
+func newPhases(at []int, s int) phases {
 	number := make(map[int]int)
-	group = make([]int, len(at))
-	if s == 1 {
-		return group, 1
-	}
+	p := phases{of: make([]int, len(at))}
+	last, group := -1, 0
 	for i, t := range at {
-		p := phase(t, s)
-		g, ok := number[p]
-		if !ok {
-			g = len(number)
-			number[p] = g
+		if f := phase(t, s); f != last {
+			g, ok := number[f]
+			if !ok {
+				g = len(number)
+				number[f] = g
+				p.count = append(p.count, 0)
+			}
+			last, group = f, g
 		}
-		group[i] = g
+		p.of[i] = group
+		p.count[group]++
 	}
-	return group, len(number)
+	return p
+}
+
+// demean takes the mean of each phase off its values, in place.
+func (p phases) demean(x []float64) {
+	mean := make([]float64, len(p.count))
+	for i, v := range x {
+		mean[p.of[i]] += v
+	}
+	for g := range mean {
+		mean[g] /= p.count[g]
+	}
+	for i := range x {
+		x[i] -= mean[p.of[i]]
+	}
 }
 
 // QS measures what season is left in a series:

@@ -54,7 +54,7 @@ func KPSS(r series.Runs, terms Terms, bandwidth int) (KPSSResult, error) {
 	if bandwidth >= n {
 		panic(fmt.Sprintf("unitroot: KPSS bandwidth %d with %d values", bandwidth, n))
 	}
-	e, _, err := series.Scaled(what, r.Concat())
+	e, _, err := scaled(what, r)
 	if err != nil {
 		return KPSSResult{}, err
 	}
@@ -96,19 +96,20 @@ func bartlett(r series.Runs, e []float64, q int) float64 {
 		x := e[start : start+len(run)]
 		start += len(run)
 		sum := 0.0
-		for t := 0; t < len(x)+q; t++ {
-			if t == len(x) && t <= q { // the whole run is inside the window
-				total += float64(q-t+1) * sum * sum
-				if t = q + 1; t == len(x)+q {
-					break
-				}
-			}
-			if t < len(x) {
-				sum += x[t]
-			}
-			if t > q {
-				sum -= x[t-q-1]
-			}
+		head := min(len(x), q+1)
+		for _, v := range x[:head] {
+			sum += v
+			total += sum * sum
+		}
+		for t := q + 1; t < len(x); t++ {
+			sum += x[t] - x[t-q-1]
+			total += sum * sum
+		}
+		if inside := q + 1 - len(x); inside > 0 { // windows that hold the whole run
+			total += float64(inside) * sum * sum
+		}
+		for t := len(x) - head; t < len(x)-1; t++ {
+			sum -= x[t]
 			total += sum * sum
 		}
 	}

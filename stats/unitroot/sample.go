@@ -1,6 +1,8 @@
 package unitroot
 
 import (
+	"math"
+
 	"gonum.org/v1/gonum/floats"
 
 	"lagwise/stats/series"
@@ -26,7 +28,7 @@ func newSample(r series.Runs, terms Terms) (*sample, error) {
 	if n < 4 {
 		return nil, tooShort(adfName, n, 4, "")
 	}
-	z, exponent, err := series.Scaled(adfName, r.Concat())
+	z, exponent, err := scaled(adfName, r)
 	if err != nil {
 		return nil, err
 	}
@@ -64,22 +66,36 @@ func last(ends []int) int {
 	return ends[len(ends)-1]
 }
 
+// scaled is series.Scaled of all values.
+func scaled(what string, r series.Runs) ([]float64, int, error) {
+	if len(r) == 1 {
+		return series.Scaled(what, r[0]) // a copy already
+	}
+	return series.Scaled(what, r.Concat())
+}
+
 func largest(x []float64) float64 {
-	return max(floats.Max(x), -floats.Min(x))
+	top := 0.0
+	for _, v := range x {
+		if a := math.Abs(v); a > top {
+			top = a
+		}
+	}
+	return top
 }
 
 // takeLineOff subtracts the least-squares line over the index from the centred
 // z and returns its slope.
 func takeLineOff(z []float64) float64 {
-	middle := float64(len(z)-1) / 2
+	n := float64(len(z))
+	middle := (n - 1) / 2
+	square := n * (n*n - 1) / 12
 	total := 0.0
 	// Twice: the second pass takes off what rounding left of a steep line.
 	for pass := 0; pass < 2; pass++ {
-		var product, square float64
+		product := 0.0
 		for t, v := range z {
-			d := float64(t) - middle
-			product += d * v
-			square += d * d
+			product += (float64(t) - middle) * v
 		}
 		slope := product / square
 		for t := range z {
