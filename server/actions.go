@@ -3,6 +3,7 @@ package server
 import (
 	"context"
 	"encoding/json"
+	"fmt"
 	"path/filepath"
 	"slices"
 	"strings"
@@ -66,7 +67,7 @@ func (s *session) quickFixes(ctx context.Context, ed *engine.Edition, path strin
 	}
 	at := s.places(text)
 	asked := at.span(r)
-	var order []string
+	var order []string // identities of rewrites
 	made := map[string]*protocol.CodeAction{}
 	proven := map[string][]finding.Rewrite{}
 	for i := range judged.Findings {
@@ -79,7 +80,7 @@ func (s *session) quickFixes(ctx context.Context, ed *engine.Edition, path strin
 			return nil, err
 		}
 		for _, rw := range rewrites {
-			id := rw.Title + "\x00" + f.Request
+			id := identity(rw)
 			if made[id] == nil {
 				order = append(order, id)
 				made[id] = s.quickFix(ed, judged.Root, rw)
@@ -180,8 +181,8 @@ func (s *session) preferred(ctx context.Context, ed *engine.Edition, path string
 			continue
 		}
 		for _, rw := range f.Rewrites {
-			id := f.Request + "\x00" + rw.Title
-			if !rw.Preferred || taken[id] {
+			id := identity(rw)
+			if !rw.Preferred || taken[id] || overlap(edits, rw.Edits) {
 				continue
 			}
 			taken[id] = true
@@ -192,6 +193,22 @@ func (s *session) preferred(ctx context.Context, ed *engine.Edition, path string
 		return nil, nil
 	}
 	return s.workspaceEdit(ed, proved.Root, edits), nil
+}
+
+// identity tells one rewrite from another: several findings list the same.
+func identity(rw finding.Rewrite) string { return fmt.Sprint(rw.Title, rw.Edits) }
+
+// overlap reports whether two lists of edits touch the same text, so that a
+// client would refuse them together.
+func overlap(a, b []finding.Edit) bool {
+	for _, x := range a {
+		for _, y := range b {
+			if x.File == y.File && x.At.Start < y.At.End && y.At.Start < x.At.End {
+				return true
+			}
+		}
+	}
+	return false
 }
 
 // workspaceEdit converts edits, file by file in the order of their first

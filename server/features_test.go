@@ -37,14 +37,27 @@ aim = "association"
 between = ["eelgrass", "boats"]
 `
 
-// shore is a folder with two series that drift apart.
+// shore is a folder with two series that drift apart: random walks with
+// opposite drift, as in Granger and Newbold (1974).
 func shore() map[string]string {
-	rows := "year,eelgrass,boats\n"
-	for i, pair := range []string{"91,10", "88,12", "89,15", "84,15", "80,19", "81,24", "77,25", "70,29", "69,30", "66,36",
-		"61,37", "62,41", "58,40", "51,46", "49,51", "45,52", "44,58", "38,61", "33,60", "31,67", "30,70", "24,72", "21,79", "19,80", "12,84"} {
-		rows += fmt.Sprintf("%d,%s\n", 1990+i, pair)
+	state := uint64(20)
+	step := func() float64 { // a sum of twelve uniforms is close to normal
+		sum := -6.0
+		for range 12 {
+			state = state*6364136223846793005 + 1442695040888963407
+			sum += float64(state>>40) / (1 << 24)
+		}
+		return sum
 	}
-	return map[string]string{"shore.csv": rows, "shore.series.toml": shoreManifest, "shore.analysis.toml": shoreAnalysis}
+	var rows strings.Builder
+	rows.WriteString("year,eelgrass,boats\n")
+	eelgrass, boats := 400.0, 100.0
+	for year := 1940; year < 2021; year++ {
+		fmt.Fprintf(&rows, "%d,%.2f,%.2f\n", year, eelgrass, boats)
+		eelgrass += 4*step() - 2
+		boats += 4*step() + 2
+	}
+	return map[string]string{"shore.csv": rows.String(), "shore.series.toml": shoreManifest, "shore.analysis.toml": shoreAnalysis}
 }
 
 // levels is a rule about data that speaks of every request on levels.
