@@ -143,11 +143,15 @@ func (s *sample) choose(rule LagRule, top int) (choice, error) {
 	}
 	// A residual of that size is the rounding of the fit.
 	if last.rss <= math.Max(float64(last.rows)*rounding*rounding, 1e-24*last.level*last.level) {
-		return choice{}, &stats.Undefined{What: adfName, Reason: stats.Singular, N: len(s.z),
-			Detail: "the values before determine every value exactly"}
+		return choice{}, exact(len(s.z))
 	}
 	df := float64(last.rows - s.terms.Count() - 1 - lags)
 	return choice{t: last.level / math.Sqrt(last.rss/df), rows: last.rows, lags: lags, criterion: criterion}, nil
+}
+
+func exact(n int) error {
+	return &stats.Undefined{What: adfName, Reason: stats.Singular, N: n,
+		Detail: "the values before determine every value exactly"}
 }
 
 // nested fits all orders on the common sample, by the Gram matrix when that
@@ -209,6 +213,7 @@ func (f nested) best(rule LagRule, exponent int) (lags int, criterion float64) {
 	units := 2 * float64(exponent) * math.Ln2
 	criterion = math.Inf(1)
 	for p, v := range rss {
+		v = math.Max(v, n*rounding*rounding) // less is rounding, and prefers nothing
 		c := n*(math.Log(2*math.Pi)+math.Log(v/n)+units+1) + penalty*float64(f.terms+1+p)
 		if c < criterion {
 			lags, criterion = p, c

@@ -5,6 +5,7 @@ import (
 
 	"gonum.org/v1/gonum/mat"
 
+	"lagwise/stats"
 	"lagwise/stats/series"
 )
 
@@ -13,7 +14,7 @@ import (
 // terms beyond those of under. Their Phi1 is (Constant, None), Phi2 (Trend,
 // None), Phi3 (Trend, Constant). It is compared with their tables, not with F.
 //
-// Errors as for ADF. It panics when under is not below terms.
+// Errors as for ADF; dependent lags are Singular here. It panics when under is not below terms.
 func JointF(r series.Runs, terms, under Terms, lags int) (float64, error) {
 	terms.check()
 	if under >= terms || lags < 0 {
@@ -41,10 +42,18 @@ func JointF(r series.Runs, terms, under Terms, lags int) (float64, error) {
 		row[m+lags] = s.z[t]
 		row[m+lags+1] = s.e[t] + s.mean
 	})
-	if err := s.independent(triangle, m+lags, kept, kept+lags); err != nil {
+	err = s.independent(triangle, kept, m+lags, kept, kept+lags)
+	if d, ok := err.(dependent); ok {
+		return 0, &stats.Undefined{What: adfName, Reason: stats.Singular, N: r.N(), Detail: d.Error()}
+	}
+	if err != nil {
 		return 0, err
 	}
-	return fOfLast(triangle, m-kept+1, rows-coefficients), nil
+	f := fOfLast(triangle, m-kept+1, rows-coefficients)
+	if !(f < 1e24) { // the residuals are rounding
+		return 0, exact(r.N())
+	}
+	return f, nil
 }
 
 // fOfLast is the F of the last q columns before the response.

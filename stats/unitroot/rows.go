@@ -20,7 +20,7 @@ func (s *sample) nestedByRows(top int) (nested, error) {
 		}
 		row[m+top+1] = s.e[t]
 	})
-	if err := s.independent(r, m, m+1, m+top+1); err != nil {
+	if err := s.independent(r, m, m, m+1, m+top+1); err != nil {
 		return nested{}, err
 	}
 	out := nested{rows: s.count(top), terms: m, lag: make([]float64, top)}
@@ -43,7 +43,7 @@ func (s *sample) finalByRows(lags int) (final, error) {
 		row[m+lags] = s.z[t]
 		row[m+lags+1] = s.e[t]
 	})
-	if err := s.independent(r, m+lags, m, m+lags); err != nil {
+	if err := s.independent(r, m, m+lags, m, m+lags); err != nil {
 		return final{}, err
 	}
 	level, rest := m+lags, r.At(m+lags+1, m+lags+1)
@@ -96,10 +96,10 @@ func (s *sample) triangle(lags int, fill func(row []float64, t int)) *mat.Dense 
 	return mat.DenseCopyOf(m.Slice(0, width, 0, width))
 }
 
-// independent checks the level and the lags in columns first..end-1 of r: a
-// column of which nothing is left is an exact combination of those before it.
-func (s *sample) independent(r *mat.Dense, level, first, end int) error {
-	m := s.terms.Count()
+// independent checks the level and the lags in columns first..end-1 of r, whose
+// first m columns are terms: a column of which nothing is left is an exact
+// combination of those before it.
+func (s *sample) independent(r *mat.Dense, m, level, first, end int) error {
 	if left(r, m, level) <= rounding {
 		return constant(adfName, len(s.z), "no movement of the level around the terms")
 	}
