@@ -5,6 +5,7 @@ import (
 	"crypto/sha256"
 	"encoding/hex"
 	"encoding/json"
+	"errors"
 	"path/filepath"
 
 	"go.lsp.dev/jsonrpc2"
@@ -22,13 +23,11 @@ func (s *session) Diagnostic(ctx context.Context, p *protocol.DocumentDiagnostic
 		return fullReport(nil, ""), nil
 	}
 	ed := edition(ctx)
-	ctx, stop := s.untilEdited(ctx, path)
-	defer stop()
 	j, err := working(ctx, s, p.WorkDoneToken, "Checking "+filepath.Base(path), func(ctx context.Context) (*engine.Judgement, error) {
-		return ed.Judge(ctx, path)
+		return whilePresent(ctx, s, ed, path, func(ctx context.Context) (*engine.Judgement, error) { return ed.Judge(ctx, path) })
 	})
 	if err != nil {
-		return nil, retrigger(ctx, err)
+		return nil, retrigger(err)
 	}
 	items := s.diagnostics(ed, j)
 	id := digest(encoded(items))
@@ -44,8 +43,8 @@ func fullReport(items []protocol.Diagnostic, id string) protocol.DocumentDiagnos
 
 // retrigger tells the client to ask again when it was a newer edit that ended
 // the judging.
-func retrigger(ctx context.Context, err error) error {
-	if context.Cause(ctx) != errEdited {
+func retrigger(err error) error {
+	if !errors.Is(err, errEdited) {
 		return err
 	}
 	again := jsonrpc2.NewError(jsonrpc2.Code(protocol.LSPErrorCodesServerCancelled), "the document changed")

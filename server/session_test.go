@@ -369,6 +369,28 @@ func TestAClientThatPullsIsNeverPushedTo(t *testing.T) {
 	}
 }
 
+// A pull that an edit overtakes is told to come again (-32802 with
+// retriggerRequest, as the protocol's pull model has it).
+func TestAnEditOvertakesAPull(t *testing.T) {
+	began, gate := make(chan struct{}, 10), make(chan struct{})
+	slow := lint.Rule{Name: "slow", Severity: finding.Hint, Scope: lint.OfDocument, Need: lint.Text, Run: func(*lint.Inquiry) {
+		began <- struct{}{}
+		<-gate
+	}}
+	c := serving(t, realClock, slow)
+	path := filepath.Join(c.begin(object{"textDocument": object{"diagnostic": object{}}}, nil), "a.analysis.toml")
+	c.open(path, 1, "x = 1")
+	pull := c.ask("textDocument/diagnostic", object{"textDocument": textDocument(path)})
+	<-began
+	c.edit(path, 2, object{"text": "x = 2"})
+	c.call("textDocument/hover", object{"textDocument": textDocument("/other.toml"), "position": position(0, 0)}, nil)
+	close(gate)
+	m := c.answer(pull)
+	if m.Error == nil || m.Error.Code != -32802 || !strings.Contains(string(m.Error.Data), `"retriggerRequest":true`) {
+		t.Errorf("%+v, want -32802 with retriggerRequest", m.Error)
+	}
+}
+
 func TestDiagnosticsCarryRuleSourceAndFingerprint(t *testing.T) {
 	c := serving(t, realClock, marks)
 	path := filepath.Join(c.begin(object{}, nil), "a.analysis.toml")

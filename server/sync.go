@@ -12,6 +12,8 @@ import (
 
 	"go.lsp.dev/protocol"
 	"go.lsp.dev/uri"
+
+	"lagwise/lint/engine"
 )
 
 // documents is what the client has open.
@@ -29,8 +31,8 @@ type openDocument struct {
 	// until it sends all of it.
 	astray bool
 
-	outdated context.CancelCauseFunc // ends what works on this version
-	present  context.Context         // until then
+	present  context.Context    // of this version; ends with the next
+	outdated context.CancelFunc // ends it
 }
 
 // errEdited is why work on an earlier version ended.
@@ -39,20 +41,30 @@ var errEdited = errors.New("the document was edited")
 // renew begins a version: work on the one before it ends.
 func (s *session) renew(doc *openDocument) {
 	if doc.outdated != nil {
-		doc.outdated(errEdited)
+		doc.outdated()
 	}
-	doc.present, doc.outdated = context.WithCancelCause(s.base)
+	doc.present, doc.outdated = context.WithCancel(s.base)
 }
 
-// untilEdited returns a context that also ends when the document is edited.
-func (s *session) untilEdited(ctx context.Context, path string) (context.Context, func()) {
-	ctx, cancel := context.WithCancelCause(ctx)
+// whilePresent runs f for the text that the edition has of a document, and
+// gives errEdited instead once the client has another.
+func whilePresent[T any](ctx context.Context, s *session, ed *engine.Edition, path string, f func(context.Context) (T, error)) (T, error) {
 	doc, open := s.documents.get(path)
 	if !open {
-		return ctx, func() { cancel(nil) }
+		return f(ctx)
 	}
-	stop := context.AfterFunc(doc.present, func() { cancel(errEdited) })
-	return ctx, func() { stop(); cancel(nil) }
+	var none T
+	if version, _ := ed.Version(path); version != doc.version {
+		return none, errEdited
+	}
+	ctx, cancel := context.WithCancel(ctx)
+	defer cancel()
+	defer context.AfterFunc(doc.present, cancel)()
+	answer, err := f(ctx)
+	if doc.present.Err() != nil {
+		return none, errEdited
+	}
+	return answer, err
 }
 
 // get returns a copy of what is known of an open document.
@@ -293,7 +305,7 @@ func (s *session) DidClose(_ context.Context, p *protocol.DidCloseTextDocumentPa
 	if !ok {
 		return nil
 	}
-	doc.outdated(errEdited)
+	doc.outdated()
 	s.documents.remove(path)
 	s.workspace.Close(path)
 	s.publisher.closed(path, doc.uri)
