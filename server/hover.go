@@ -35,8 +35,11 @@ func (s *session) Hover(ctx context.Context, p *protocol.HoverParams) (*protocol
 		said, span = append(said, s.meaning(key)), place
 	}
 	about, place, err := s.about(ctx, ed, path, offset, p.WorkDoneToken)
-	if err != nil {
-		return nil, err
+	if ctx.Err() != nil {
+		return nil, ctx.Err()
+	}
+	if err != nil { // what is known of the key is still worth showing
+		s.logFailure("hover", err)
 	}
 	if about != "" {
 		said = append(said, about)

@@ -170,6 +170,9 @@ func (p *publisher) finish(j judged) {
 		return
 	}
 	delete(p.running, j.path)
+	for _, b := range j.found.Broken {
+		p.s.logger.Printf("a rule broke down: %s", b)
+	}
 	p.send(j.ed, j.found)
 	p.s.watch.reaches(j.path, j.ed.Reaches(j.path))
 }
