@@ -54,7 +54,7 @@ func (c *Case) Fit() (*Fit, error) {
 
 func (c *Case) regressed() (*Fit, error) {
 	if c.req.Form != "" && c.req.Form != "static" {
-		return nil, &Unserved{fmt.Sprintf("form = %q is not computed by this version; static is", c.req.Form)}
+		return nil, &Unserved{"form", fmt.Sprintf("form = %q is not computed by this version; static is", c.req.Form)}
 	}
 	frame, err := c.Used()
 	if err != nil {
@@ -64,10 +64,10 @@ func (c *Case) regressed() (*Fit, error) {
 	if c.req.Estimator == "gls" {
 		process, err := request.ParseErrors(c.req.Errors)
 		if err != nil {
-			return nil, &Unserved{err.Error()}
+			return nil, &Unserved{"errors", err.Error()}
 		}
 		if process.Kind != "ar" {
-			return nil, &Unserved{fmt.Sprintf("errors = %q is not computed by this version; ar(p) is", c.req.Errors)}
+			return nil, &Unserved{"errors", fmt.Sprintf("errors = %q is not computed by this version; ar(p) is", c.req.Errors)}
 		}
 		order = process.P
 	}
@@ -162,4 +162,14 @@ func (f *Fit) check(frame *dataset.Frame, order int, alpha float64) {
 
 func runsOf(x []float64, ends []int) series.Runs {
 	return column{values: x, runs: ends}.stretches()
+}
+
+// Persistence is the parameter of the errors of a GLS that tells how near
+// they are to a unit root, with its profile interval: the parameter of AR(1),
+// the lag-1 autocorrelation parameter of a higher order.
+func (f *Fit) Persistence() (value float64, interval [2]float64) {
+	if len(f.GLS.AR) == 0 || len(f.GLS.Intervals) == 0 {
+		return 0, [2]float64{-1, 1}
+	}
+	return f.GLS.AR[0], f.GLS.Intervals[0]
 }

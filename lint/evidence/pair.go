@@ -11,8 +11,8 @@ import (
 )
 
 // Unserved is the error of what a request asks and this version cannot
-// compute.
-type Unserved struct{ Message string }
+// compute; Key is the key that asks for it.
+type Unserved struct{ Key, Message string }
 
 func (u *Unserved) Error() string { return u.Message }
 
@@ -32,9 +32,9 @@ func (c *Case) Pair(i, j int) (association.Result, error) {
 func (c *Case) served() error {
 	switch {
 	case c.req.Inference == "surrogates" || c.req.Inference == "modified-t":
-		return &Unserved{fmt.Sprintf("inference = %q is not computed by this version; effective-n is", c.req.Inference)}
+		return &Unserved{"inference", fmt.Sprintf("inference = %q is not computed by this version; effective-n is", c.req.Inference)}
 	case c.req.Lags != nil:
-		return &Unserved{"a scan over lags is not computed by this version; lag = K is"}
+		return &Unserved{"lags", "a scan over lags is not computed by this version; lag = K is"}
 	}
 	return nil
 }

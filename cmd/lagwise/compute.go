@@ -1,0 +1,56 @@
+package main
+
+import (
+	"context"
+	"io"
+
+	"lagwise/lint/present"
+	"lagwise/lint/result"
+)
+
+func compute(ctx context.Context, s streams, args []string) (int, error) {
+	o := &options{}
+	f := newFlags("compute", s, o, "text", "json", "csv", "markdown")
+	if err := f.parse(args, o); err != nil {
+		return exitFailed, err
+	}
+	b, err := o.open(s)
+	if err != nil {
+		return exitFailed, err
+	}
+	ed := b.workspace.Edition()
+	var all []result.Computed
+	err = b.each(ctx, s, "computing", func(_ int, path string) error {
+		got, err := ed.Compute(ctx, path)
+		all = append(all, got...)
+		return err
+	})
+	if err != nil {
+		return exitFailed, err
+	}
+	err = o.write(s, func(w io.Writer, format string) error {
+		switch format {
+		case "json":
+			return present.ComputeJSON(w, b.head(), all)
+		case "csv":
+			return present.ComputeCSV(w, all)
+		case "markdown":
+			return present.ComputeMarkdown(w, all)
+		}
+		return present.ComputeText(w, all)
+	})
+	if b.trouble != nil {
+		return exitFailed, b.trouble
+	}
+	return computeStatus(all), err
+}
+
+// computeStatus is 1 when a request could not be computed as it is written.
+func computeStatus(all []result.Computed) int {
+	for _, c := range all {
+		if c.AsWritten == nil || c.AsWritten.Error != "" {
+			return exitHeld
+		}
+	}
+	return exitFine
+}
