@@ -57,5 +57,5 @@ type Rule struct {
 	// Question is set where the rewrites that answer the rule change what is
 	// asked, so none is ever preferred.
 	Question bool
-	Run         func(*Inquiry)
+	Run      func(*Inquiry)
 }

@@ -130,4 +130,3 @@ func Thin(x []float64) []float64 {
 	}
 	return out
 }
-
