@@ -1,13 +1,13 @@
 package evidence
 
-// Bound says that a p-value is known only as a bound: the end of a published
-// table. The empty Bound is an exact value.
-type Bound string
+// Limit says that a p-value is known only as a bound: the end of a published
+// table. The empty value is exact.
+type PBound string
 
 // The bounds.
 const (
-	AtMost  Bound = "at-most"
-	AtLeast Bound = "at-least"
+	AtMost  PBound = "at-most"
+	AtLeast PBound = "at-least"
 )
 
 // Test is one test with all that a reader needs to repeat it. Pointers are
@@ -21,7 +21,7 @@ type Test struct {
 	Bandwidth *int
 	Statistic *float64
 	P         *float64
-	PBound    Bound
+	PBound    PBound
 	N         int
 	Critical  []Critical
 	Error     string

@@ -60,7 +60,7 @@ func (p *Profile) kpss(runs series.Runs, terms unitroot.Terms, set Settings) (un
 	return got, err == nil
 }
 
-func boundOf(sign int) Bound {
+func boundOf(sign int) PBound {
 	switch {
 	case sign < 0:
 		return AtMost

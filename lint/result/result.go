@@ -6,7 +6,7 @@ import "lagwise/lint/evidence"
 
 // Bound, Test and Critical are evidence's, shown as they are.
 type (
-	Bound    = evidence.Bound
+	Bound    = evidence.PBound
 	Test     = evidence.Test
 	Critical = evidence.Critical
 )
