@@ -59,5 +59,11 @@ func All() []lint.Rule {
 		unstatedAim,
 		aimAndMethod,
 		unacceptedMethod,
+
+		// About deviations.
+		endedDeviation,
+		endingDeviation,
+		incompleteDeviation,
+		idleDeviation,
 	}
 }
