@@ -205,3 +205,24 @@ func (b *basis) original(v []float64) []float64 {
 	}
 	return v
 }
+
+// Basis is an orthonormal basis of the columns of the design, the constant
+// first: n values each. It is shared: never modify it.
+func (f *Fit) Basis() [][]float64 { return f.basis.q }
+
+// HasConstant reports whether the first coefficient is the constant.
+func (f *Fit) HasConstant() bool { return f.basis.constant }
+
+// Directions are, for each coefficient, the residuals of its column on all the
+// others, at length one: the coefficient is proportional to their product with
+// the response.
+func (f *Fit) Directions() [][]float64 {
+	out := make([][]float64, f.K)
+	for i, row := range f.basis.back {
+		out[i] = make([]float64, f.N)
+		for l, v := range row {
+			floats.AddScaled(out[i], v/floats.Norm(row, 2), f.basis.q[l])
+		}
+	}
+	return out
+}

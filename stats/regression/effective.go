@@ -31,11 +31,7 @@ func (f *Fit) WithEffectiveN(d Design, level float64) (*Fit, error) {
 	g.EffectiveN = make([]float64, f.K)
 	g.SE = make([]float64, f.K)
 	df := make([]float64, f.K)
-	for i, row := range b.back {
-		x := make([]float64, f.N)
-		for l, v := range row {
-			floats.AddScaled(x, v, b.q[l])
-		}
+	for i, x := range f.Directions() {
 		nStar, err := association.EffectiveNAboutZero(x, b.rest, d.RunEnds())
 		if err != nil {
 			return nil, err
@@ -51,7 +47,7 @@ func (f *Fit) WithEffectiveN(d Design, level float64) (*Fit, error) {
 				Detail: fmt.Sprintf("effective n is %.3g for %d coefficients", nStar, f.K)}
 		}
 		df[i] = left
-		g.SE[i] = math.Ldexp(math.Sqrt(b.squares()/left)*floats.Norm(row, 2), b.yUnit-b.unit[i])
+		g.SE[i] = math.Ldexp(math.Sqrt(b.squares()/left)*floats.Norm(b.back[i], 2), b.yUnit-b.unit[i])
 	}
 	g.spread()
 	g.wald = waldRule{df: n}
