@@ -177,18 +177,14 @@ func (r *Roots) open(fromDir, written string, limit int64) (*os.File, Identity, 
 	if err != nil {
 		return nil, Identity{}, err
 	}
-	info, err := os.Lstat(path)
-	if err != nil {
-		return nil, Identity{}, refuse(UnreadableRecord, "%q cannot be read: %s", written, plain(err))
-	}
-	if refused := irregular(written, info, limit); refused != nil {
-		return nil, Identity{}, refused
+	if _, err := r.stat(fromDir, written, limit); err != nil {
+		return nil, Identity{}, err
 	}
 	f, err := openBelow(holding, path)
 	if err != nil {
 		return nil, Identity{}, refuse(UnreadableRecord, "%q cannot be read: %s", written, plain(err))
 	}
-	info, err = f.Stat()
+	info, err := f.Stat()
 	if err == nil {
 		if refused := irregular(written, info, limit); refused != nil {
 			f.Close()
@@ -198,6 +194,23 @@ func (r *Roots) open(fromDir, written string, limit int64) (*os.File, Identity, 
 	}
 	f.Close()
 	return nil, Identity{}, refuse(UnreadableRecord, "%q cannot be read: %s", written, plain(err))
+}
+
+// stat returns the identity of a file without opening it. The error is a
+// *Refused for what open would refuse.
+func (r *Roots) stat(fromDir, written string, limit int64) (Identity, error) {
+	path, _, err := r.resolve(fromDir, written)
+	if err != nil {
+		return Identity{}, err
+	}
+	info, err := os.Lstat(path)
+	if err != nil {
+		return Identity{}, refuse(UnreadableRecord, "%q cannot be read: %s", written, plain(err))
+	}
+	if refused := irregular(written, info, limit); refused != nil {
+		return Identity{}, refused
+	}
+	return identityOf(path, info), nil
 }
 
 func openBelow(root, path string) (*os.File, error) {

@@ -5,7 +5,6 @@ import (
 	"compress/gzip"
 	"errors"
 	"io"
-	"os"
 	"strings"
 
 	"golang.org/x/text/encoding"
@@ -33,7 +32,7 @@ func decoderOf(name string) (encoding.Encoding, *Trouble) {
 
 // openText lays decompression and decoding over a file: what it returns is
 // UTF-8 without a byte order mark, if the file is what it is said to be.
-func openText(f *os.File, rec *request.Record, limits Limits) (io.Reader, *Trouble) {
+func openText(f io.Reader, rec *request.Record, limits Limits) (io.Reader, *Trouble) {
 	decoder, trouble := decoderOf(rec.Encoding)
 	if trouble != nil {
 		return nil, trouble
