@@ -58,6 +58,23 @@ func (a *Axis) end(of func(a, b float64) float64) string {
 	return a.Format(end)
 }
 
+// Per names the unit that rates and slopes along the axis are counted in.
+func (a *Axis) Per() string {
+	switch a.Unit {
+	case Row:
+		return "row"
+	case Year:
+		return "year"
+	case Month:
+		return "month"
+	case Day:
+		return "day"
+	case Second:
+		return "second"
+	}
+	return firstOf(a.UnitName, "unit of "+string(a.Kind))
+}
+
 func (a *Axis) scale() scale {
 	return scale{unit: a.Unit, turned: a.Kind == request.Age, quarters: a.quarters}
 }

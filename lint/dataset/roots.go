@@ -93,6 +93,9 @@ func realPath(path string) string {
 	return filepath.Join(realPath(parent), filepath.Base(path))
 }
 
+// Root returns the real path of the root of the document, "" when it has none.
+func (r *Roots) Root() string { return r.root }
+
 // Rel returns a path relative to the root of the document, with /; a path
 // that is not below it stays as it is.
 func (r *Roots) Rel(abs string) string {
