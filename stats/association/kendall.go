@@ -3,7 +3,6 @@ package association
 import (
 	"math"
 
-	"lagwise/stats"
 	"lagwise/stats/distribution"
 )
 
@@ -99,24 +98,20 @@ func inversionChances(n int) []float64 {
 	return chance
 }
 
-// taus is the matrix of tau-b of several columns.
-func taus(what string, columns [][]float64) ([][]float64, error) {
-	out := make([][]float64, len(columns))
-	ranks := make([][]float64, len(columns))
-	for i, c := range columns {
-		ranks[i] = TiedRanks(c)
-		out[i] = make([]float64, len(columns))
+// taus is the matrix of tau-b of ranked columns; 0 with a column that does not
+// vary.
+func taus(ranks [][]float64) [][]float64 {
+	out := make([][]float64, len(ranks))
+	for i := range ranks {
+		out[i] = make([]float64, len(ranks))
 		out[i][i] = 1
-	}
-	for i := range columns {
 		for j := range i {
 			p := countPairs(ranks[i], ranks[j])
-			if p.all == p.tiedX || p.all == p.tiedY {
-				return nil, &stats.Undefined{What: what, Reason: stats.Constant, N: len(columns[0])}
+			if p.all > p.tiedX && p.all > p.tiedY {
+				out[i][j] = p.tau()
+				out[j][i] = out[i][j]
 			}
-			out[i][j] = p.tau()
-			out[j][i] = out[i][j]
 		}
 	}
-	return out, nil
+	return out
 }

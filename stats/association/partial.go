@@ -1,6 +1,7 @@
 package association
 
 import (
+	"errors"
 	"fmt"
 	"math"
 
@@ -20,7 +21,8 @@ import (
 // Pearson and Spearman: t = r sqrt(df/(1 - r^2)) on df = m - 2 - g; Kendall:
 // z = tau/sqrt(2(2(m-g) + 5)/(9(m-g)(m-g-1))). n* comes from the residuals (for
 // Kendall: of the ranks), never from the series themselves. Intervals as of the
-// plain coefficients with m - g for m.
+// plain coefficients with m - g for m. A given series that is constant, as a
+// clock is after differencing, takes nothing out and still counts in g.
 //
 // The error is *stats.Undefined: TooShort below g + 3 rows, NotFinite, Constant
 // (also when the given series explain x or y completely), Singular naming the
@@ -56,15 +58,14 @@ func removed(x, y []float64, given [][]float64, runs []int, from, coefficient st
 	if err := enough(what, len(x), len(given)+3); err != nil {
 		return Result{}, err
 	}
-	if _, err := units(what, columns...); err != nil {
-		return Result{}, err
-	}
 	switch coefficient {
 	case "pearson":
 	case "spearman", "kendall":
-		for i, c := range columns {
-			columns[i] = TiedRanks(c)
+		ranked, err := allRanks(what, columns)
+		if err != nil {
+			return Result{}, err
 		}
+		columns = ranked
 	default:
 		panic(fmt.Sprintf("association: coefficient %q", coefficient))
 	}
@@ -91,14 +92,21 @@ type residuals struct {
 }
 
 func newResiduals(what string, columns [][]float64) (residuals, error) {
-	u, err := units(what, columns...)
+	u, err := units(what, columns[:2]...)
 	if err != nil {
 		return residuals{}, err
 	}
 	r := residuals{x: u[0], y: u[1], g: len(columns) - 2}
 	var basis [][]float64
-	for i, c := range u[2:] {
-		q, left := without(c, basis)
+	for i, c := range columns[2:] {
+		z, err := unit(what, c)
+		if isConstant(err) {
+			continue
+		}
+		if err != nil {
+			return residuals{}, err
+		}
+		q, left := without(z, basis)
 		if left < 1e-9 {
 			return residuals{}, &stats.Undefined{What: what, Reason: stats.Singular, N: len(c),
 				Detail: fmt.Sprintf("given series %d is a combination of those before it", i+1)}
@@ -113,6 +121,24 @@ func newResiduals(what string, columns [][]float64) (residuals, error) {
 		}
 	}
 	return r, nil
+}
+
+// allRanks ranks every column.
+func allRanks(what string, columns [][]float64) ([][]float64, error) {
+	ranks := make([][]float64, len(columns))
+	for i, c := range columns {
+		if _, err := unit(what, c); err != nil && (i < 2 || !isConstant(err)) {
+			return nil, err
+		}
+		ranks[i] = TiedRanks(c)
+	}
+	return ranks, nil
+}
+
+// isConstant reports whether err says that a column does not vary.
+func isConstant(err error) bool {
+	var u *stats.Undefined
+	return errors.As(err, &u) && u.Reason == stats.Constant
 }
 
 // without takes an orthonormal basis out of v, twice because once leaves
@@ -169,10 +195,7 @@ func (r residuals) kendall(what string, columns [][]float64, runs []int, from st
 	if _, err := degrees(what, len(r.x), m, r.g); err != nil {
 		return Result{}, err
 	}
-	matrix, err := taus(what, columns)
-	if err != nil {
-		return Result{}, err
-	}
+	matrix := taus(columns)
 	tested, own, err := partialFrom(what, matrix, from, len(r.x))
 	if err != nil {
 		return Result{}, err
