@@ -13,7 +13,7 @@ import (
 // inference in which either series carries autocorrelation. lead is how the
 // message begins; the numbers are those of the first pair.
 func reportDependence(q *lint.Inquiry, lead string) {
-	profiles := make([]*evidence.Profile, len(q.Case.Series))
+	profiles := make([]*evidence.Profile, len(q.Case.Names()))
 	for i := range profiles {
 		p, err := q.Case.UsedProfile(i)
 		if err != nil {

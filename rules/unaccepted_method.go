@@ -5,6 +5,7 @@ import (
 	"fmt"
 
 	"lagwise/lint"
+	"lagwise/lint/evidence"
 	"lagwise/lint/finding"
 	"lagwise/lint/request"
 )
@@ -58,7 +59,7 @@ func breachesOf(r *request.Asked, accepted *request.Accepted) []breach {
 		found = append(found, breach{"on", fmt.Sprintf("The lab's conventions ask for one of %s in `on`.",
 			list(accepted.On, "or"))})
 	}
-	if always := accepted.AlwaysDifference; correlation && always != nil && *always && !differenced(r.On) {
+	if always := accepted.AlwaysDifference; correlation && always != nil && *always && !evidence.Differences(r.On) {
 		found = append(found, breach{"on", "The lab's conventions accept a correlation on differences only: " +
 			"first-differences, rates-of-change or seasonal-differences in `on`."})
 	}
@@ -91,17 +92,6 @@ func acceptsAny(list []string, on []request.Transform) bool {
 	}
 	for _, t := range on {
 		if accepts(list, t.Name) || accepts(list, t.String()) {
-			return true
-		}
-	}
-	return false
-}
-
-// differenced reports whether the transforms hold a difference along the axis.
-func differenced(on []request.Transform) bool {
-	for _, t := range on {
-		switch t.Name {
-		case request.FirstDifferences, request.SeasonalDifferences, request.RatesOfChange, request.Differences:
 			return true
 		}
 	}

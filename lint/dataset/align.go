@@ -10,7 +10,7 @@ import (
 	"lagwise/stats"
 )
 
-// Align brings the series of a request, in the order of its Series method,
+// Align brings the series of a request, in the order of its Columns method,
 // onto shared rows: cut to from and until, at the coarser step of every or on
 // the grid when one is asked for, lags applied, and only rows in which every
 // series has a value. Positions match exactly, or within the tolerance asked
@@ -43,7 +43,7 @@ func Align(ctx context.Context, all []*Series, req *request.Request) (*Frame, er
 		return nil, err
 	}
 	for i, t := range tracks {
-		if tracks[i], err = t.shifted(lagOf(i, t.name, req)); err != nil {
+		if tracks[i], err = t.shifted(lagOf(i, req)); err != nil {
 			return nil, err
 		}
 	}
@@ -72,17 +72,15 @@ func prepared(s *Series, req *request.Request) (*track, error) {
 }
 
 // lagOf returns by how many steps the i-th series is moved later.
-func lagOf(i int, name string, req *request.Request) int {
+func lagOf(i int, req *request.Request) int {
 	if req.Kind != request.Regression {
 		if i == 0 {
 			return req.Lag
 		}
 		return 0
 	}
-	for _, p := range req.Predictors {
-		if p.Series == name {
-			return p.Lag
-		}
+	if i > 0 && i <= len(req.Predictors) {
+		return req.Predictors[i-1].Lag
 	}
 	return 0
 }

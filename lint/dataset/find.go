@@ -113,7 +113,7 @@ func findAxis(t *table, rec *request.Record, sample [][][]byte) axisPlan {
 		named := axisNames[strings.ToLower(c.name)] == request.Time
 		switch {
 		case clock != nil && clock.form != yearForm && clock.form != decimalForm && !compact(column):
-		case clock != nil && compact(column) && named:
+		case clock != nil && clock.form == dayForm && compact(column) && named:
 		case clock != nil && (named || c.name == "") && years(column, t.point):
 		case clock != nil && monotone(column, t.point) > 0 && years(column, t.point) && clock.form == yearForm:
 		case clock == nil && mostly(column, isAmbiguous):

@@ -2,6 +2,7 @@ package dataset
 
 import (
 	"bytes"
+	"math"
 	"strings"
 
 	"lagwise/lint/request"
@@ -54,13 +55,9 @@ func (c codes) text(cell []byte) bool {
 }
 
 // suspect looks for an undeclared missing code: a repeated extreme made of
-// nines (-999, -99.9, 9999) that lies apart from every other value. values
-// holds NaN where a value is missing. The count is 0 when there is none.
-func suspect(values []float64) (code float64, count int) {
-	low, high, any := bounds(values, nil)
-	if !any {
-		return 0, 0
-	}
+// nines (-999, -99.9, 9999) that lies apart from every other value. low and
+// high are the least and greatest value. The count is 0 when there is none.
+func suspect(values []float64, low, high float64) (code float64, count int) {
 	for _, extreme := range []float64{low, high} {
 		if !madeOfNines(extreme) {
 			continue
@@ -71,32 +68,36 @@ func suspect(values []float64) (code float64, count int) {
 				n++
 			}
 		}
-		otherLow, otherHigh, some := bounds(values, &extreme)
-		if n < 2 || !some {
+		if n < 2 {
 			continue
 		}
-		apart := max(otherLow-extreme, extreme-otherHigh)
-		if apart > otherHigh-otherLow || extreme < 0 && otherLow >= 0 {
-			return extreme, n
+		if otherLow, otherHigh, some := boundsWithout(values, extreme); some {
+			apart := max(otherLow-extreme, extreme-otherHigh)
+			if apart > otherHigh-otherLow || extreme < 0 && otherLow >= 0 {
+				return extreme, n
+			}
 		}
 	}
 	return 0, 0
 }
 
-// bounds returns the least and greatest value that is not missing, without
-// those equal to except.
-func bounds(values []float64, except *float64) (low, high float64, any bool) {
-	for _, v := range values {
-		if v != v || except != nil && v == *except {
-			continue
+// bounds returns the least and greatest value that is not missing.
+func bounds(values []float64) (low, high float64, any bool) {
+	return boundsWithout(values, math.NaN())
+}
+
+// boundsWithout is bounds of the values that differ from one.
+func boundsWithout(values []float64, one float64) (low, high float64, any bool) {
+	low, high = math.Inf(1), math.Inf(-1)
+	for _, v := range values { // a NaN fails both comparisons
+		if v < low && v != one {
+			low = v
 		}
-		if !any {
-			low, high, any = v, v, true
-			continue
+		if v > high && v != one {
+			high = v
 		}
-		low, high = min(low, v), max(high, v)
 	}
-	return low, high, any
+	return low, high, low <= high
 }
 
 // madeOfNines reports whether a number is written with nines only, at least

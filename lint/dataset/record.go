@@ -187,6 +187,9 @@ func (t *table) prepare(rec *request.Record, sample [][][]byte) (axisPlan, *Trou
 		t.columns[plan.column].role = timeRole
 		t.clock = plan.clock
 	}
+	for _, c := range t.columns {
+		t.plain = append(t.plain, c.role == plainRole)
+	}
 	return plan, nil
 }
 
@@ -239,9 +242,10 @@ func (t *table) column(i int, plan axisPlan, axis *Axis, order []int) *Column {
 	if order != nil {
 		column.Values = arranged(c.values, order)
 	}
-	column.Suspect, column.SuspectCount = suspect(column.Values)
-	low, high, any := bounds(column.Values, nil)
-	column.Constant = any && low == high && column.N > 1
+	if low, high, any := bounds(column.Values); any {
+		column.Constant = low == high && column.N > 1
+		column.Suspect, column.SuspectCount = suspect(column.Values, low, high)
+	}
 	return column
 }
 

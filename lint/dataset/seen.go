@@ -47,7 +47,7 @@ func (r *Record) SeenOf(decl *request.Series, rec *request.Record) SeriesSeen {
 		return SeriesSeen{Trouble: trouble}
 	}
 	seen := SeriesSeen{Column: c, Unit: s.Unit, Censored: s.Censored, Support: s.Support, Season: s.Season, Constant: c.Constant}
-	if low, _, any := bounds(c.Values, nil); any && c.Constant {
+	if low, _, any := bounds(c.Values); any && c.Constant {
 		seen.Value = low
 	}
 	return seen

@@ -12,6 +12,10 @@ const evenShare = 0.5
 // neighbours within a group. The axis is even when all distances are whole
 // steps and at least half are one step.
 func (a *Axis) measure() {
+	if a.Unit == Row && a.groups == nil {
+		a.Step, a.StepText, a.Even, a.Share = 1, "1", true, 1
+		return
+	}
 	distances := a.distances()
 	if len(distances) == 0 {
 		a.Even = a.Unit == Row

@@ -43,7 +43,9 @@ type table struct {
 	clock   *clock      // reads the timeRole column
 	labels  []string    // of the groups, in the order of appearance
 	group   []int32     // label of each row; nil without a groupRole column
+	plain   []bool      // columns that hold numbers only
 	undo    []*int      // counters raised by the record at hand
+	inside  int         // line ends inside quotes of the record at hand
 	blanks  int         // trailing blank lines of a one-column file
 }
 
@@ -121,10 +123,8 @@ func (t *table) legible(text []byte) *Trouble {
 // take reads the records of a text that ends with a line end, and returns how
 // much it consumed: less than all when the last record runs on.
 func (t *table) take(text []byte) (used int, trouble *Trouble) {
-	width := len(t.columns)
 	for used < len(text) {
-		i := used
-		if skip, ok := t.skipped(text[i:]); ok {
+		if skip, ok := t.skipped(text[used:]); ok {
 			used += skip
 			t.line++
 			continue
@@ -134,50 +134,63 @@ func (t *table) take(text []byte) (used int, trouble *Trouble) {
 				return 0, trouble
 			}
 		}
-		col := 0
-		for ; ; col++ {
-			if col < width && t.columns[col].role == plainRole {
-				v, end, ok := scanNumber(text, i, t.delimiter, t.point)
-				if ok && !t.codes.number(v) {
-					t.values[col][t.rows] = v
-					i = end
-					if text[i] == t.delimiter {
-						i++
-						continue
-					}
-					break
-				}
-			}
-			cell, end, ok := t.cell(text, i)
-			if !ok {
-				t.rollBack()
-				return used, nil
-			}
-			cell = bytes.TrimSpace(cell)
-			if col < width {
-				t.judge(col, cell)
-			} else if len(cell) > 0 || col > width {
-				return 0, t.ragged(text[used:])
-			}
-			i = end
-			if text[i] != t.delimiter {
-				break
-			}
-			i++
+		end, cells, ok := t.takeRecord(text, used)
+		if !ok {
+			t.rollBack()
+			return used, nil
 		}
-		if col+1 < width && !t.fill(col+1) {
+		if cells != len(t.columns) && !t.fill(cells) {
 			return 0, t.ragged(text[used:])
 		}
-		if text[i] == '\r' {
-			i++
+		if text[end] == '\r' {
+			end++
 		}
-		if text[i] != '\n' {
+		if text[end] != '\n' {
 			return 0, unreadable("line %d holds a carriage return inside a cell; put quotes around the cell, or mend the line ends", t.line)
 		}
-		t.close(text[used : i+1])
-		used = i + 1
+		t.close()
+		used = end + 1
 	}
 	return used, nil
+}
+
+// takeRecord reads the cells of the record at text[i] and returns where it
+// ends and how many cells it has, an empty one behind a trailing delimiter not
+// counted. ok is false when the text ends inside it.
+func (t *table) takeRecord(text []byte, i int) (end, cells int, ok bool) {
+	width, row, values, delimiter, point := len(t.columns), t.rows, t.values, t.delimiter, t.point
+	for col := 0; ; col++ {
+		if col < width && t.plain[col] {
+			v, next, number := scanNumber(text, i, delimiter, point)
+			if number && !t.codes.number(v) {
+				values[col][row] = v
+				if i = next; text[i] != delimiter {
+					return i, col + 1, true
+				}
+				i++
+				continue
+			}
+		}
+		cell, next, ok := t.cell(text, i)
+		if !ok {
+			return 0, 0, false
+		}
+		if text[i] == '"' {
+			t.inside += bytes.Count(text[i:next], []byte{'\n'})
+		}
+		cell = bytes.TrimSpace(cell)
+		if col < width {
+			t.judge(col, cell)
+		}
+		if i = next; text[i] == delimiter {
+			i++
+			continue
+		}
+		if col == width && len(cell) == 0 {
+			return i, width, true
+		}
+		return i, col + 1, true
+	}
 }
 
 // skipped reports whether a record is a comment or a blank line. In a file of
@@ -197,27 +210,24 @@ func (t *table) skipped(text []byte) (length int, ok bool) {
 	return 0, false
 }
 
-// fill gives the cells that a record lacks; only one nameless last column,
-// made by a trailing delimiter in the header, may be lacking.
-func (t *table) fill(from int) bool {
-	if from != len(t.columns)-1 || t.headers[from] != "" {
+// fill gives the cell that a record of that many cells lacks: only a nameless
+// last column, made by a trailing delimiter in the header, may be lacking.
+func (t *table) fill(cells int) bool {
+	if cells != len(t.columns)-1 || t.headers[cells] != "" {
 		return false
 	}
-	t.judge(from, nil)
+	t.judge(cells, nil)
 	return true
 }
 
 // close ends a record.
-func (t *table) close(text []byte) {
+func (t *table) close() {
 	if by := t.line - t.rows; len(t.shifts) == 0 || t.shifts[len(t.shifts)-1].by != by {
 		t.shifts = append(t.shifts, lineShift{t.rows, by})
 	}
-	t.undo = t.undo[:0]
 	t.rows++
-	t.line++
-	if text[0] == '"' || bytes.IndexByte(text[:len(text)-1], '\n') >= 0 {
-		t.line += bytes.Count(text[:len(text)-1], []byte{'\n'})
-	}
+	t.line += 1 + t.inside
+	t.undo, t.inside = t.undo[:0], 0
 }
 
 // rollBack takes back what the record at hand has counted.
@@ -225,7 +235,7 @@ func (t *table) rollBack() {
 	for _, n := range t.undo {
 		*n--
 	}
-	t.undo = t.undo[:0]
+	t.undo, t.inside = t.undo[:0], 0
 }
 
 func (t *table) ragged(text []byte) *Trouble {

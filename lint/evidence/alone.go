@@ -42,10 +42,7 @@ func (s *Store) Alone(ctx context.Context, m *request.Manifest, roots *dataset.R
 			return nil, err
 		}
 		for _, decl := range s.declared(m, rec, record) {
-			one := Alone{Series: decl, Record: rec, Column: decl.Column, Err: err}
-			if one.Column == "" {
-				one.Column = decl.Name
-			}
+			one := Alone{Series: decl, Record: rec, Column: columnName(decl), Err: err}
 			if err == nil {
 				s.fillAlone(ctx, &one, record, set)
 			}
@@ -94,7 +91,7 @@ func (s *Store) declared(m *request.Manifest, rec *request.Record, read *dataset
 	}
 	for _, col := range read.Columns {
 		if col.Numeric && col.Name != read.Axis.Column {
-			all = append(all, &request.Series{Name: col.Name, Record: rec.Name, Column: col.Name, Implicit: true})
+			all = append(all, rec.Implicit(col.Name))
 		}
 	}
 	return all

@@ -3,6 +3,7 @@ package evidence
 import (
 	"context"
 	"errors"
+	"slices"
 	"sync"
 
 	"lagwise/lint/dataset"
@@ -50,21 +51,17 @@ func (c *Case) Req() *request.Request { return &c.req }
 
 // Names returns the names of the series, in the order of the frames' columns.
 func (c *Case) Names() []string {
-	names := make([]string, len(c.Series))
-	for i, s := range c.Series {
-		names[i] = s.Name
+	columns := c.req.Columns()
+	names := make([]string, len(columns))
+	for i, s := range columns {
+		names[i] = s.Series
 	}
 	return names
 }
 
 // Index returns the column of a series.
 func (c *Case) Index(name string) int {
-	for i, s := range c.Series {
-		if s.Name == name {
-			return i
-		}
-	}
-	return -1
+	return slices.Index(c.Names(), name)
 }
 
 // Pairs returns the columns of every pair of a correlation, in its order.
@@ -110,7 +107,9 @@ func (c *Case) load() ([]*dataset.Series, error) {
 	if got != nil {
 		return got, nil
 	}
-	for _, b := range c.Series {
+	for _, name := range c.Names() {
+		i := slices.IndexFunc(c.Series, func(b BoundSeries) bool { return b.Name == name })
+		b := c.Series[i]
 		s, err := c.store.loaded(c.ctx, c.Roots, b)
 		if err != nil {
 			return nil, c.note(seriesError(b.Name, err))

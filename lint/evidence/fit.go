@@ -62,11 +62,8 @@ func (c *Case) regressed() (*Fit, error) {
 	}
 	order := 0
 	if c.req.Estimator == "gls" {
-		process, err := request.ParseErrors(c.req.Errors)
-		if err != nil {
-			return nil, &Unserved{"errors", err.Error()}
-		}
-		if process.Kind != "ar" {
+		process, known := request.ParseErrors(c.req.Errors)
+		if !known || process.Kind != "ar" {
 			return nil, &Unserved{"errors", fmt.Sprintf("errors = %q is not computed by this version; ar(p) is", c.req.Errors)}
 		}
 		order = process.P

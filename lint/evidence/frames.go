@@ -94,9 +94,10 @@ func (c *Case) each() [][]request.Transform {
 	if len(c.req.OnEach) == 0 {
 		return nil
 	}
-	steps := make([][]request.Transform, len(c.Series))
-	for i, s := range c.Series {
-		steps[i] = c.req.OnEach[s.Name]
+	names := c.Names()
+	steps := make([][]request.Transform, len(names))
+	for i, name := range names {
+		steps[i] = c.req.OnEach[name]
 	}
 	return steps
 }
@@ -108,7 +109,7 @@ func (c *Case) shapes(tail []request.Transform) ([]dataset.Shape, error) {
 	if !hasStep(tail, request.Prewhitened) {
 		return nil, nil
 	}
-	shapes := make([]dataset.Shape, len(c.Series))
+	shapes := make([]dataset.Shape, len(c.Names()))
 	if tail[0].Name != request.Prewhitened {
 		return shapes, nil
 	}

@@ -177,6 +177,20 @@ func (r *Request) Series() []string {
 	return kept
 }
 
+// Columns lists what a computation needs, one column each: the series of a
+// correlation; the response and every predictor, with its lag, of a
+// regression. A series stands twice when it is a predictor at two lags.
+func (r *Request) Columns() []Predictor {
+	if r.Kind == Regression {
+		return append([]Predictor{{Series: r.Response}}, r.Predictors...)
+	}
+	var all []Predictor
+	for _, name := range r.Series() {
+		all = append(all, Predictor{Series: name})
+	}
+	return all
+}
+
 // Pairs lists every pair of `between`, in its order.
 func (r *Request) Pairs() [][2]string {
 	var pairs [][2]string

@@ -124,7 +124,7 @@ func symbol(o *Outcome) string {
 // levelsRemark says what a number on levels speaks about.
 func levelsRemark(c *evidence.Case) string {
 	drifting := 0
-	for i := range c.Series {
+	for i := range c.Names() {
 		if p, err := c.BaseProfile(i); err == nil && p.Verdict.Drifts() {
 			drifting++
 		}

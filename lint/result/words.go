@@ -3,15 +3,17 @@ package result
 import (
 	"math"
 	"strconv"
+
+	"lagwise/lint/evidence"
 )
 
 // P writes a p-value as the field rounds it: p = 0.03, p = 0.004, p < 0.001;
 // a bound with its sign.
 func P(p float64, bound Bound) string {
 	switch {
-	case bound == AtMost:
+	case bound == evidence.AtMost:
 		return "p <= " + decimals(p)
-	case bound == AtLeast:
+	case bound == evidence.AtLeast:
 		return "p >= " + decimals(p)
 	case p < 0.001:
 		return "p < 0.001"

@@ -153,11 +153,21 @@ func invert(columns [][]float64) [][]float64 {
 	return out
 }
 
-// coefficients are those on the columns, original units, of g on the basis.
+// coefficients are those on the columns, scaled units, of g on the basis.
 func (b *basis) coefficients(g []float64) []float64 {
 	out := make([]float64, len(g))
 	for i, row := range b.back {
-		out[i] = math.Ldexp(floats.Dot(row, g), b.yUnit-b.unit[i])
+		out[i] = floats.Dot(row, g)
+	}
+	return out
+}
+
+// unscaled turns values in the scaled units of the coefficients into original
+// ones, saturated at the largest binary number.
+func (b *basis) unscaled(c []float64) []float64 {
+	out := make([]float64, len(c))
+	for i, v := range c {
+		out[i] = saturate(math.Ldexp(v, b.yUnit-b.unit[i]))
 	}
 	return out
 }

@@ -50,6 +50,8 @@ type Fit struct {
 	Fitted, Residuals                    []float64
 
 	basis   *basis
+	own     []float64   // coefficients in the scaled units of the basis
+	ownSE   []float64   // and their standard errors
 	related [][]float64 // correlations of the coefficients, free of their units
 	wald    waldRule
 }

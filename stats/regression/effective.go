@@ -29,7 +29,7 @@ func (f *Fit) WithEffectiveN(d Design, level float64) (*Fit, error) {
 	b := f.basis
 	n := float64(f.N)
 	g.EffectiveN = make([]float64, f.K)
-	g.SE = make([]float64, f.K)
+	g.ownSE = make([]float64, f.K)
 	df := make([]float64, f.K)
 	for i, x := range f.Directions() {
 		nStar, err := association.EffectiveNAboutZero(x, b.rest, d.RunEnds())
@@ -47,7 +47,7 @@ func (f *Fit) WithEffectiveN(d Design, level float64) (*Fit, error) {
 				Detail: fmt.Sprintf("effective n is %.3g for %d coefficients", nStar, f.K)}
 		}
 		df[i] = left
-		g.SE[i] = math.Ldexp(math.Sqrt(b.squares()/left)*floats.Norm(b.back[i], 2), b.yUnit-b.unit[i])
+		g.ownSE[i] = math.Sqrt(b.squares()/left) * floats.Norm(b.back[i], 2)
 	}
 	g.spread()
 	g.wald = waldRule{df: n}

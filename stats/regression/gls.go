@@ -110,11 +110,11 @@ func (l *likelihood) fit(d Design, best point) *GLSFit {
 
 	onto := make([]float64, k)
 	floats.AddTo(onto, b.onto, e.shift)
-	g.Coefficients = b.coefficients(onto)
+	g.estimates(onto)
 	df := n - float64(k+d.Removed)
 	g.setCovariance(scale(e.inverse, e.squares/df))
 	g.residuals(d, e.shift)
-	g.Sigma = math.Ldexp(math.Sqrt(e.squares/divisor/e.weights[0]), b.yUnit)
+	g.Sigma = saturate(math.Ldexp(math.Sqrt(e.squares/divisor/e.weights[0]), b.yUnit))
 	g.RSS = saturate(math.Ldexp(e.squares, 2*b.yUnit))
 	g.Normalized = l.normalized(e, b.errors(e.shift), math.Sqrt(e.squares/divisor))
 	g.buse(df)

@@ -123,7 +123,7 @@ func (f *Fit) robust(omega [][]float64, df float64, rule waldRule, level float64
 	g := *f
 	g.wald, g.EffectiveN = rule, nil
 	g.setCovariance(omega)
-	for i, se := range g.SE {
+	for i, se := range g.ownSE {
 		if !(se > 0) {
 			return nil, &stats.Undefined{What: fmt.Sprintf("robust standard error of coefficient %d", i), Reason: stats.Singular,
 				N: f.N, Detail: "the scores leave no variance"}

@@ -40,7 +40,7 @@ func OLS(d Design, level float64) (*Fit, error) {
 	f := &Fit{N: b.n, K: k, basis: b, wald: waldRule{df: df}}
 	f.Sigma = math.Ldexp(math.Sqrt(rss/df), b.yUnit)
 	f.RSS = saturate(math.Ldexp(rss, 2*b.yUnit))
-	f.Coefficients = b.coefficients(b.onto)
+	f.estimates(b.onto)
 	f.setCovariance(b.spherical(rss / df))
 	f.residuals(d, nil)
 	f.same(df, level)
@@ -56,8 +56,16 @@ func (b *basis) squares() float64 {
 	return max(floats.Dot(b.rest, b.rest), 0x1p-104*b.total)
 }
 
-// saturate keeps a square inside the finite numbers.
-func saturate(v float64) float64 { return min(v, math.MaxFloat64) }
+// saturate keeps a value inside the finite numbers.
+func saturate(v float64) float64 {
+	return max(-math.MaxFloat64, min(v, math.MaxFloat64))
+}
+
+// estimates fills in the coefficients from those on the basis.
+func (f *Fit) estimates(onto []float64) {
+	f.own = f.basis.coefficients(onto)
+	f.Coefficients = f.basis.unscaled(f.own)
+}
 
 func logOf(n int) float64 { return math.Log(float64(n)) }
 
@@ -66,10 +74,10 @@ func logOf(n int) float64 { return math.Log(float64(n)) }
 func (f *Fit) setCovariance(omega [][]float64) {
 	b := f.basis
 	c := b.covariance(omega)
-	f.SE = make([]float64, f.K)
+	f.ownSE = make([]float64, f.K)
 	f.related = make([][]float64, f.K)
 	for i := range c {
-		f.SE[i] = math.Ldexp(math.Sqrt(max(c[i][i], 0)), b.yUnit-b.unit[i])
+		f.ownSE[i] = math.Sqrt(max(c[i][i], 0))
 		f.related[i] = make([]float64, f.K)
 		for j := range c[i] {
 			f.related[i][j] = c[i][j] / math.Sqrt(c[i][i]*c[j][j])
@@ -78,13 +86,15 @@ func (f *Fit) setCovariance(omega [][]float64) {
 	f.spread()
 }
 
-// spread fills in Covariance from correlations and standard errors.
+// spread fills in SE and Covariance from correlations and standard errors in
+// scaled units.
 func (f *Fit) spread() {
+	f.SE = f.basis.unscaled(f.ownSE)
 	f.Covariance = make([][]float64, f.K)
 	for i, row := range f.related {
 		f.Covariance[i] = make([]float64, f.K)
 		for j, r := range row {
-			f.Covariance[i][j] = max(-math.MaxFloat64, saturate(r*f.SE[i]*f.SE[j]))
+			f.Covariance[i][j] = saturate(r * f.SE[i] * f.SE[j])
 		}
 	}
 }
@@ -110,20 +120,21 @@ func (f *Fit) test(df []float64, level float64) {
 	f.T, f.P = make([]float64, f.K), make([]float64, f.K)
 	f.Lower, f.Upper = make([]float64, f.K), make([]float64, f.K)
 	quantile := make(map[float64]float64)
-	for i, c := range f.Coefficients {
+	for i, c := range f.own {
 		if df[i] == 0 {
-			f.P[i], f.Lower[i], f.Upper[i] = 1, -math.MaxFloat64, math.MaxFloat64
+			f.P[i], f.Lower[i], f.Upper[i] = 1, math.Inf(-1), math.Inf(1)
 			continue
 		}
-		f.T[i] = c / f.SE[i]
+		f.T[i] = c / f.ownSE[i]
 		f.P[i] = distribution.TTwoSided(f.T[i], df[i])
 		q, ok := quantile[df[i]]
 		if !ok {
 			q = distribution.TQuantile((1+level)/2, df[i])
 			quantile[df[i]] = q
 		}
-		f.Lower[i], f.Upper[i] = c-q*f.SE[i], c+q*f.SE[i]
+		f.Lower[i], f.Upper[i] = c-q*f.ownSE[i], c+q*f.ownSE[i]
 	}
+	f.Lower, f.Upper = f.basis.unscaled(f.Lower), f.basis.unscaled(f.Upper)
 }
 
 // determination fills in R2 and F from the residual sum of squares, scaled.

@@ -62,10 +62,10 @@ func (f *Fit) quadratic(at []int) (float64, bool) {
 	m := len(at)
 	c, t := mat.NewSymDense(m, nil), mat.NewVecDense(m, nil)
 	for a, i := range at {
-		if !(f.SE[i] > 0) {
+		if !(f.ownSE[i] > 0) {
 			return 0, false
 		}
-		t.SetVec(a, f.Coefficients[i]/f.SE[i])
+		t.SetVec(a, f.own[i]/f.ownSE[i])
 		for b := a; b < m; b++ {
 			j := at[b]
 			c.SetSym(a, b, f.related[i][j])
@@ -86,7 +86,7 @@ func (f *Fit) quadratic(at []int) (float64, bool) {
 // slopes are the indices of all coefficients but the constant.
 func (f *Fit) slopes() []int {
 	var out []int
-	for i := range f.Coefficients {
+	for i := range f.own {
 		if i > 0 || !f.basis.constant {
 			out = append(out, i)
 		}

@@ -1,0 +1,28 @@
+package rules
+
+import (
+	"embed"
+	"io/fs"
+	"slices"
+	"strings"
+)
+
+//go:embed terms/*.md
+var termPages embed.FS
+
+// Term is one entry of the glossary.
+type Term struct{ Term, Page string }
+
+// Terms returns the glossary in the order of its terms. The term is the title
+// of its page.
+func Terms() []Term {
+	var all []Term
+	files, _ := fs.Glob(termPages, "terms/*.md") // the pattern is fixed
+	for _, name := range files {
+		page, _ := termPages.ReadFile(name) // it was just listed
+		title, _, _ := strings.Cut(string(page), "\n")
+		all = append(all, Term{Term: strings.TrimPrefix(title, "# "), Page: string(page)})
+	}
+	slices.SortFunc(all, func(a, b Term) int { return strings.Compare(strings.ToLower(a.Term), strings.ToLower(b.Term)) })
+	return all
+}
