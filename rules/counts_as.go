@@ -2,6 +2,7 @@ package rules
 
 import (
 	"fmt"
+	"strings"
 
 	"lagwise/lint"
 	"lagwise/lint/evidence"
@@ -67,9 +68,12 @@ func countsAs(q *lint.Inquiry, i, j int) string {
 		return fmt.Sprintf(": %d values count as %s, too few to say more.", usual.N, result.Count(n))
 	}
 	words := fmt.Sprintf(": %d values count as %s, and %s as %s.", usual.N, result.Count(n),
-		result.P(usual.P, ""), result.P(better.P, "")[2:])
+		result.P(usual.P, ""), bare(result.P(better.P, "")))
 	if n > float64(usual.N) {
 		words += " They count as more than there are because the autocorrelations have opposite signs."
 	}
 	return words
 }
+
+// bare takes "p" and an equals sign off a p-value.
+func bare(p string) string { return strings.TrimPrefix(strings.TrimPrefix(p, "p "), "= ") }

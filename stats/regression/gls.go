@@ -61,6 +61,10 @@ func GLS(d Design, order int, reml bool, level float64) (*GLSFit, error) {
 	if err != nil {
 		return nil, err
 	}
+	if floats.Dot(b.rest, b.rest) <= b.squaresFloor() {
+		return nil, &stats.Undefined{What: what, Reason: stats.Constant, N: b.n,
+			Detail: "the predictors explain the response to the last digit; no errors are left to model"}
+	}
 	l := newLikelihood(b, d.RunEnds(), order, reml)
 	best, err := l.maximise(what)
 	if err != nil {

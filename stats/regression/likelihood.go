@@ -173,7 +173,8 @@ func (e *evaluation) solve(w []float64, k int) bool {
 		return false
 	}
 	last := w[k*(k+1)/2:]
-	e.squares = last[k]
+	whole := last[k]
+	e.squares = whole
 	e.shift = append([]float64(nil), last[:k]...)
 	forward(w, e.shift)
 	e.squares -= floats.Dot(e.shift, e.shift)
@@ -186,7 +187,7 @@ func (e *evaluation) solve(w []float64, k int) bool {
 		backward(w, column)
 		e.inverse[i] = column
 	}
-	return e.squares > 0
+	return e.squares > 1e-13*whole
 }
 
 func (e *evaluation) logDet(factor []float64, k int) float64 {

@@ -53,8 +53,10 @@ func OLS(d Design, level float64) (*Fit, error) {
 // squares is the residual sum of squares, scaled, floored at what rounding of
 // the response leaves.
 func (b *basis) squares() float64 {
-	return max(floats.Dot(b.rest, b.rest), 0x1p-104*b.total)
+	return max(floats.Dot(b.rest, b.rest), b.squaresFloor())
 }
+
+func (b *basis) squaresFloor() float64 { return 0x1p-100 * b.total }
 
 // saturate keeps a value inside the finite numbers.
 func saturate(v float64) float64 {
