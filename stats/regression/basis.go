@@ -208,17 +208,22 @@ func (b *basis) errors(shift []float64) []float64 {
 	return e
 }
 
-// original multiplies by the unit of the response, in place.
+// original is v in the unit of the response.
 func (b *basis) original(v []float64) []float64 {
+	out := make([]float64, len(v))
 	for i := range v {
-		v[i] = math.Ldexp(v[i], b.yUnit)
+		out[i] = math.Ldexp(v[i], b.yUnit)
 	}
-	return v
+	return out
 }
 
 // Basis is an orthonormal basis of the columns of the design, the constant
 // first: n values each. It is shared: never modify it.
 func (f *Fit) Basis() [][]float64 { return f.basis.q }
+
+// Errors are the residuals times a power of two that keeps their squares
+// inside the binary numbers. They are shared: never modify them.
+func (f *Fit) Errors() []float64 { return f.errors }
 
 // HasConstant reports whether the first coefficient is the constant.
 func (f *Fit) HasConstant() bool { return f.basis.constant }

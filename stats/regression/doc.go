@@ -50,6 +50,7 @@ type Fit struct {
 	Fitted, Residuals                    []float64
 
 	basis   *basis
+	errors  []float64   // residuals in scaled units
 	own     []float64   // coefficients in the scaled units of the basis
 	ownSE   []float64   // and their standard errors
 	related [][]float64 // correlations of the coefficients, free of their units

@@ -104,7 +104,8 @@ func (f *Fit) spread() {
 // residuals fills in residuals and fitted values of the coefficients that
 // differ by shift, on the basis, from the least-squares ones.
 func (f *Fit) residuals(d Design, shift []float64) {
-	f.Residuals = f.basis.original(f.basis.errors(shift))
+	f.errors = f.basis.errors(shift)
+	f.Residuals = f.basis.original(f.errors)
 	f.Fitted = make([]float64, f.N)
 	floats.SubTo(f.Fitted, d.Y, f.Residuals)
 }

@@ -13,6 +13,7 @@ import (
 	"lagwise/stats"
 	"lagwise/stats/distribution"
 	"lagwise/stats/regression"
+	"lagwise/stats/series"
 )
 
 // LM is a Lagrange-multiplier test: chi-square with DF degrees of freedom, and
@@ -63,13 +64,11 @@ func add(what string, basis [][]float64, e []float64, columns [][]float64) (adde
 // part is v without the basis, at length one, and the share of its length that
 // was left.
 func part(v []float64, basis [][]float64) ([]float64, float64) {
-	q := append([]float64(nil), v...)
-	top := floats.Norm(q, math.Inf(1))
-	if top == 0 {
+	q := unitless(v)
+	length := floats.Norm(q, 2)
+	if length == 0 {
 		return q, 0
 	}
-	floats.Scale(1/top, q)
-	length := floats.Norm(q, 2)
 	for range 2 {
 		for _, b := range basis {
 			floats.AddScaled(q, -floats.Dot(b, q), b)
@@ -101,13 +100,20 @@ func (a added) f(df2 int) (f, p float64) {
 
 // standardised is v centred and scaled to values of the order of one.
 func standardised(v []float64) []float64 {
-	s := append([]float64(nil), v...)
-	if top := floats.Norm(s, math.Inf(1)); top > 0 {
-		floats.Scale(1/top, s)
-	}
+	s := unitless(v)
 	floats.AddConst(-floats.Sum(s)/float64(len(s)), s)
 	if top := floats.Norm(s, math.Inf(1)); top > 0 {
 		floats.Scale(1/top, s)
+	}
+	return s
+}
+
+// unitless is v times a power of two that brings it to the order of one; a v
+// that is not finite is left alone.
+func unitless(v []float64) []float64 {
+	s, _, err := series.Scaled("values", v)
+	if err != nil {
+		return append([]float64(nil), v...)
 	}
 	return s
 }

@@ -29,8 +29,7 @@ func DurbinWatson(e []float64, runs []int) (float64, error) {
 	if top == 0 {
 		return 0, &stats.Undefined{What: what, Reason: stats.Constant, N: len(e)}
 	}
-	u := append([]float64(nil), e...)
-	floats.Scale(1/top, u)
+	u := unitless(e)
 	return floats.Dot(u, steps(u, runs)) / floats.Dot(u, u), nil
 }
 
@@ -72,7 +71,7 @@ const mostExact = 500
 // Sources: Durbin & Watson 1950, 1971; Imhof 1961 (the integral, here along the
 // line through the saddle point: Rice 1980).
 func DurbinWatsonP(d regression.Design, f *regression.Fit) (DurbinWatsonTest, error) {
-	statistic, err := DurbinWatson(f.Residuals, d.RunEnds())
+	statistic, err := DurbinWatson(f.Errors(), d.RunEnds())
 	if err != nil {
 		return DurbinWatsonTest{}, err
 	}

@@ -27,12 +27,12 @@ func BreuschGodfrey(d regression.Design, f *regression.Fit, order int) (LM, erro
 		from := 0
 		for _, end := range d.RunEnds() {
 			if end-from > j+1 {
-				copy(lags[j][from+j+1:end], f.Residuals[from:end-j-1])
+				copy(lags[j][from+j+1:end], f.Errors()[from:end-j-1])
 			}
 			from = end
 		}
 	}
-	a, err := add(what, f.Basis(), f.Residuals, lags)
+	a, err := add(what, f.Basis(), f.Errors(), lags)
 	if err != nil {
 		return LM{}, err
 	}

@@ -33,9 +33,9 @@ func InfluenceOf(f *regression.Fit) (Influence, error) {
 		return Influence{}, &stats.Undefined{What: "influence", Reason: stats.TooShort, N: f.N, Need: f.K + 2}
 	}
 	e := make([]float64, f.N)
-	length := floats.Norm(f.Residuals, 2)
+	length := floats.Norm(f.Errors(), 2)
 	if length > 0 {
-		floats.ScaleTo(e, math.Sqrt(df)/length, f.Residuals) // in units of s
+		floats.ScaleTo(e, math.Sqrt(df)/length, f.Errors()) // in units of s
 	}
 	out := Influence{Leverage: make([]float64, f.N), Cooks: make([]float64, f.N)}
 	for _, q := range f.Basis() {
@@ -71,8 +71,7 @@ func VIF(d regression.Design, f *regression.Fit) []float64 {
 	}
 	out := make([]float64, len(d.X))
 	for j, x := range d.X {
-		z := append([]float64(nil), x...)
-		floats.Scale(1/floats.Norm(z, math.Inf(1)), z)
+		z := unitless(x)
 		if f.HasConstant() {
 			z = standardised(z)
 		}

@@ -39,7 +39,7 @@ func RESETOfPredictors(d regression.Design, f *regression.Fit) (RESETResult, err
 
 func reset(d regression.Design, f *regression.Fit, columns [][]float64) (RESETResult, error) {
 	const what = "RESET"
-	a, err := add(what, f.Basis(), f.Residuals, columns)
+	a, err := add(what, f.Basis(), f.Errors(), columns)
 	if err != nil {
 		return RESETResult{}, err
 	}

@@ -47,12 +47,12 @@ func varianceOn(what string, d regression.Design, f *regression.Fit, columns [][
 	if len(columns) == 0 {
 		return LM{}, nil, &stats.Undefined{What: what, Reason: stats.Singular, N: f.N, Detail: "there are no predictors"}
 	}
-	top := max(floats.Max(f.Residuals), -floats.Min(f.Residuals))
+	top := max(floats.Max(f.Errors()), -floats.Min(f.Errors()))
 	if !(top > 0) {
 		return LM{}, nil, &stats.Undefined{What: what, Reason: stats.Constant, N: f.N, Detail: "there are no residuals"}
 	}
 	w := make([]float64, f.N)
-	for i, e := range f.Residuals {
+	for i, e := range f.Errors() {
 		w[i] = e / top * (e / top)
 	}
 	floats.Scale(float64(f.N)/floats.Sum(w), w)
