@@ -139,6 +139,12 @@ func (t *table) readHeader(b *blocks, text []byte) *Trouble {
 		if !ok || used == 0 {
 			return unreadable("the file ends inside its header")
 		}
+		if int64(used) > t.limits.LineBytes {
+			return reached("line-bytes", t.limits.LineBytes, int64(used), "bytes in one line")
+		}
+		if at := bytes.IndexByte(text[:used], '\r'); at >= 0 && at+1 < used && text[at+1] != '\n' && !bytes.Contains(text[:at], []byte{'"'}) {
+			return unreadable("the header holds a bare carriage return; save the file with line feeds (or CR LF) as line ends")
+		}
 		if record != nil {
 			rows = append(rows, record)
 		}

@@ -80,11 +80,11 @@ func (t *table) read(b *blocks, live func() error) *Trouble {
 		if b.done && left == 0 {
 			return t.finish()
 		}
+		if used == 0 && int64(left) > t.limits.LineBytes {
+			return reached("line-bytes", t.limits.LineBytes, int64(left), "bytes in one line")
+		}
 		if b.done && used == 0 {
 			return unreadable("the quote that opens on or after line %d is never closed", t.line)
-		}
-		if int64(left) > t.limits.LineBytes {
-			return reached("line-bytes", t.limits.LineBytes, int64(left), "bytes in one line")
 		}
 		if err := b.fill(); err != nil {
 			return readError(err)
