@@ -2,7 +2,6 @@ package rules
 
 import (
 	"embed"
-	"io/fs"
 	"slices"
 	"strings"
 )
@@ -17,9 +16,9 @@ type Term struct{ Term, Page string }
 // of its page.
 func Terms() []Term {
 	var all []Term
-	files, _ := fs.Glob(termPages, "terms/*.md") // the pattern is fixed
-	for _, name := range files {
-		page, _ := termPages.ReadFile(name) // it was just listed
+	files, _ := termPages.ReadDir("terms") // it is embedded
+	for _, file := range files {
+		page, _ := termPages.ReadFile("terms/" + file.Name()) // it was just listed
 		title, _, _ := strings.Cut(string(page), "\n")
 		all = append(all, Term{Term: strings.TrimPrefix(title, "# "), Page: string(page)})
 	}

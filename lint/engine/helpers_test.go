@@ -125,3 +125,6 @@ unit = "{count}"
 [series.nitrate]
 unit = "mg/L"
 `
+
+// shoreData are a few rows of the record, of no other meaning.
+const shoreData = "year,eelgrass,boats,nitrate\n2001,3,5,1\n2002,4,4,2\n2003,2,6,2\n2004,5,3,1\n"

@@ -83,7 +83,7 @@ func TestDeviations(t *testing.T) {
 		{"other data", "", given + "data = \"sha256:00ff\"\n", "drift ended-deviation", false},
 	} {
 		t.Run(c.name, func(t *testing.T) {
-			root := lay(t, map[string]string{"shore.series.toml": shore, "lab.conventions.toml": c.conventions,
+			root := lay(t, map[string]string{"shore.series.toml": shore, "shore.csv": shoreData, "lab.conventions.toml": c.conventions,
 				"a.analysis.toml": between("eelgrass", "boats") + c.rest})
 			quiet := lint.Rule{Name: "season", Scope: lint.OfRequest, Severity: finding.Warning, Run: func(*lint.Inquiry) {}}
 			rules := append(problemRules(), voice("drift", finding.Error), quiet)

@@ -36,7 +36,7 @@ func estimateWords(symbol string, o *result.Outcome) (estimate, interval string)
 func nWords(o *result.Outcome) string {
 	n := fmt.Sprintf("n %d", o.N)
 	if o.EffectiveN != nil {
-		n += " as " + result.Count(*o.EffectiveN)
+		n += " counting as " + result.Count(*o.EffectiveN)
 	}
 	return n
 }

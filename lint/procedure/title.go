@@ -12,7 +12,7 @@ func title(r request.Request) string {
 	if r.Kind == request.Regression {
 		return regressionTitle(r)
 	}
-	t := "Correlate " + onWords(r.On)
+	t := "Correlate " + request.OnWords(r.On)
 	switch r.Inference {
 	case "effective-n":
 		t += ", with effective n"
@@ -29,9 +29,9 @@ func title(r request.Request) string {
 func regressionTitle(r request.Request) string {
 	var t string
 	if r.Estimator == "gls" {
-		t = fmt.Sprintf("Fit %s by GLS with %s errors", onWords(r.On), strings.ToUpper(r.Errors))
+		t = fmt.Sprintf("Fit %s by GLS with %s errors", request.OnWords(r.On), strings.ToUpper(r.Errors))
 	} else {
-		t = fmt.Sprintf("Regress %s by least squares", onWords(r.On))
+		t = fmt.Sprintf("Regress %s by least squares", request.OnWords(r.On))
 	}
 	switch {
 	case r.Trend && r.SeasonalTerms:
@@ -49,43 +49,3 @@ func regressionTitle(r request.Request) string {
 	}
 	return t
 }
-
-// plural is how the values are called after a step.
-var plural = map[string]string{
-	request.Log:                 "logarithms",
-	request.Anomalies:           "anomalies",
-	request.Detrended:           "detrended values",
-	request.FirstDifferences:    "first differences",
-	request.SeasonalDifferences: "seasonal differences",
-	request.RatesOfChange:       "rates of change",
-	request.Increments:          "increments",
-	request.Prewhitened:         "prewhitened values",
-	request.Standardized:        "standardized values",
-}
-
-// onWords names the values after the transforms: "first differences of
-// anomalies". The last step comes first.
-func onWords(on []request.Transform) string {
-	if len(on) == 0 {
-		return "levels"
-	}
-	if len(on) >= 2 && on[len(on)-1] == on[len(on)-2] && on[len(on)-1].Name == request.FirstDifferences {
-		words := "second differences"
-		if len(on) > 2 {
-			words += " of " + onWords(on[:len(on)-2])
-		}
-		return words
-	}
-	words, known := plural[on[len(on)-1].Name]
-	if !known {
-		words = on[len(on)-1].String()
-	}
-	if len(on) > 1 {
-		words += " of " + onWords(on[:len(on)-1])
-	}
-	return words
-}
-
-// OnWords names the values that a request relates: "levels", "first
-// differences of anomalies".
-func OnWords(on []request.Transform) string { return onWords(on) }

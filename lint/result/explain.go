@@ -36,10 +36,7 @@ func Explain(c, recommended *evidence.Case, leaves []string) (*Explanation, erro
 }
 
 func titleOf(r *request.Request) string {
-	of := "levels"
-	if len(r.On) > 0 {
-		of = strings.Join(onNames(r.On), ", ")
-	}
+	of := request.OnWords(r.On)
 	if r.Kind == request.Correlation {
 		kind := "correlation"
 		switch {
@@ -95,10 +92,7 @@ func sides(c, recommended *evidence.Case, results []Computed, leaves []string, f
 func ptr(r request.Request) *request.Request { return &r }
 
 func sideLabel(r *request.Request) string {
-	of := "levels"
-	if len(r.On) > 0 {
-		of = strings.Join(onNames(r.On), ", ")
-	}
+	of := request.OnWords(r.On)
 	if r.Kind == request.Regression && r.Estimator == "gls" {
 		label := "on " + of + ", GLS " + r.Errors
 		if r.Trend {
