@@ -76,6 +76,7 @@ var requests = map[string]bool{
 	protocol.MethodTextDocumentCodeAction: true,
 	protocol.MethodCodeActionResolve:      true,
 	protocol.MethodTextDocumentDiagnostic: true,
+	methodFindings:                        true,
 }
 
 func (s *session) answers(method string) bool { return requests[method] }

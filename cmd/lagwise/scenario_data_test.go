@@ -14,10 +14,11 @@ import (
 )
 
 // drawStep: draw FILE AXIS ROWS NAME=EXPRESSION… writes a CSV file of seeded
-// series. AXIS is year:1967, month:2005 or day:2019. An expression is a sum of
-// terms, each WEIGHT*KIND:SEED: noise, walk, ar0.7 (any parameter), line (from
-// 0, up 1 a step), season (a sine of 12 steps), skewed (the exponential of a
-// normal deviate), or another column of the same call, by its name.
+// series. AXIS is year:1967, month:2005, day:2019 or depth:0 (uneven). An
+// expression is a sum of terms, each WEIGHT*KIND:SEED: noise, walk, ar0.7 (any
+// parameter), line (from 0, up 1 a step), season (a sine of 12 steps), skewed
+// (the exponential of a normal deviate), sum:KIND:SEED (its running sum), or
+// another column of the same call, by its name.
 func drawStep(ts *testscript.TestScript, neg bool, args []string) {
 	if neg || len(args) < 4 {
 		ts.Fatalf("usage: draw FILE AXIS ROWS NAME=EXPRESSION…")
@@ -52,6 +53,8 @@ func position(ts *testscript.TestScript, axis string, first, i int) string {
 		return strconv.Itoa(first + i)
 	case "month":
 		return fmt.Sprintf("%d-%02d", first+i/12, i%12+1)
+	case "depth": // steps of 1 to 3
+		return fmt.Sprintf("%.2f", float64(first)+2*float64(i)+0.5*math.Sin(3*float64(i)))
 	case "day":
 		return time.Date(first, 1, 1+i, 0, 0, 0, 0, time.UTC).Format(time.DateOnly)
 	}
@@ -80,40 +83,59 @@ func one(ts *testscript.TestScript, columns map[string][]float64, kind string, r
 	if c, ok := columns[kind]; ok {
 		return c
 	}
+	if of, ok := strings.CutPrefix(kind, "sum:"); ok {
+		x := one(ts, columns, of, rows)
+		for i := 1; i < rows; i++ {
+			x[i] += x[i-1]
+		}
+		return x
+	}
 	name, seedText, _ := strings.Cut(kind, ":")
 	seed, _ := strconv.ParseUint(seedText, 10, 64)
+	e := make([]float64, rows)
 	r := rand.New(rand.NewPCG(seed, 7))
-	phi, err := strconv.ParseFloat(strings.TrimPrefix(name, "ar"), 64)
-	if name != "walk" && !strings.HasPrefix(name, "ar") {
-		phi = 0
-	} else if name == "walk" {
-		phi = 1
-	} else {
-		ts.Check(err)
+	for i := range e {
+		e[i] = r.NormFloat64()
 	}
-	x, last := make([]float64, rows), 0.0
-	if phi > 0 && phi < 1 {
-		last = r.NormFloat64() / math.Sqrt(1-phi*phi)
-	}
-	for i := range x {
+	for i := range e {
 		switch name {
+		case "noise":
 		case "line":
-			x[i] = float64(i)
+			e[i] = float64(i)
 		case "season":
-			x[i] = math.Sin(2 * math.Pi * float64(i) / 12)
+			e[i] = math.Sin(2 * math.Pi * float64(i) / 12)
 		case "skewed":
-			x[i] = math.Exp(r.NormFloat64())
-		case "constant":
-			x[i] = 1
+			e[i] = math.Exp(e[i])
+		case "walk":
+			if i > 0 {
+				e[i] += e[i-1]
+			}
 		default:
-			last = phi*last + r.NormFloat64()
-			x[i] = last
+			phi, err := strconv.ParseFloat(strings.TrimPrefix(name, "ar"), 64)
+			ts.Check(err)
+			if i == 0 {
+				e[i] /= math.Sqrt(1 - phi*phi)
+			} else {
+				e[i] += phi * e[i-1]
+			}
 		}
 	}
-	if !slices.Contains([]string{"line", "season", "skewed", "constant", "walk", "noise"}, name) && phi == 0 {
-		ts.Fatalf("no series of kind %q", kind)
+	return e
+}
+
+// withoutStep: without FILE ROW… takes data rows out of a CSV file, counted
+// from 1 below the header.
+func withoutStep(ts *testscript.TestScript, neg bool, args []string) {
+	if neg || len(args) < 2 {
+		ts.Fatalf("usage: without FILE ROW…")
 	}
-	return x
+	var kept strings.Builder
+	for i, line := range strings.SplitAfter(ts.ReadFile(args[0]), "\n") {
+		if !slices.Contains(args[1:], strconv.Itoa(i)) {
+			kept.WriteString(line)
+		}
+	}
+	ts.Check(os.WriteFile(ts.MkAbs(args[0]), []byte(kept.String()), 0o644))
 }
 
 // hostileStep: hostile KIND FILE makes what is too large or too odd to stand in
