@@ -16,10 +16,7 @@ func makeAxis(t *table, plan axisPlan, declared request.Period) (a *Axis, order 
 	}
 	if plan.column < 0 || plan.ambiguous {
 		a.Unit = Row
-		a.Positions = make([]float64, t.rows)
-		for i := range a.Positions {
-			a.Positions[i] = float64(i + 1)
-		}
+		a.countRows(t.rows)
 		if plan.ambiguous {
 			a.notePlace(t, plan.column, 0, t.rows)
 		}
@@ -34,6 +31,17 @@ func makeAxis(t *table, plan axisPlan, declared request.Period) (a *Axis, order 
 	a.quarters = plan.clock != nil && plan.clock.form == quarterForm
 	a.measure()
 	return a, order
+}
+
+// countRows makes positions of the order of the rows, in each group by itself.
+func (a *Axis) countRows(rows int) {
+	a.Positions = make([]float64, rows)
+	counts := make([]float64, max(1, len(a.labels)))
+	for i := range a.Positions {
+		g := a.groupOf(i)
+		counts[g]++
+		a.Positions[i] = counts[g]
+	}
 }
 
 // notePlace tells of positions that could not be read, the first at row.
