@@ -20,7 +20,7 @@ func compute(ctx context.Context, s streams, args []string) (int, error) {
 	}
 	ed := b.workspace.Edition()
 	var all []result.Computed
-	err = b.each(ctx, s, "computing", func(_ int, path string) error {
+	err = b.each(ctx, s, "computing", func(path string) error {
 		got, err := ed.Compute(ctx, path)
 		all = append(all, got...)
 		return err

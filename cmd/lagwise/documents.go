@@ -2,6 +2,7 @@ package main
 
 import (
 	"context"
+	"errors"
 	"fmt"
 	"io"
 	"os"
@@ -82,9 +83,10 @@ func (b *batch) head() present.Head {
 	return present.NewHead(version, root, b.onDate)
 }
 
-// each runs work on every document, several at a time, results by index; it
-// stops at the first error or when the context ends.
-func (b *batch) each(ctx context.Context, s streams, doing string, work func(i int, path string) error) error {
+// each runs work on every document. A document that cannot be worked on is
+// trouble of the run, and the others are still told; only the end of the
+// context stops it.
+func (b *batch) each(ctx context.Context, s streams, doing string, work func(path string) error) error {
 	p := newProgress(s.err, doing, len(b.documents), b.quiet)
 	defer p.end()
 	for i, path := range b.documents {
@@ -92,11 +94,11 @@ func (b *batch) each(ctx context.Context, s streams, doing string, work func(i i
 			return err
 		}
 		p.at(i)
-		if err := work(i, path); err != nil {
-			return err
+		if err := work(path); err != nil && ctx.Err() == nil {
+			b.trouble = errors.Join(b.trouble, err)
 		}
 	}
-	return nil
+	return ctx.Err()
 }
 
 // shown is a path as the text names it: relative to the current folder.

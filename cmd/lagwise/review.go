@@ -50,9 +50,9 @@ func review(ctx context.Context, s streams, args []string) (int, error) {
 // reviewAll judges every document. The status is what the findings make of it.
 func (b *batch) reviewAll(ctx context.Context, s streams, known map[string]bool) ([]present.Reviewed, int, error) {
 	ed := b.workspace.Edition()
-	all := make([]present.Reviewed, len(b.documents))
+	var all []present.Reviewed
 	status := exitFine
-	err := b.each(ctx, s, "reviewing", func(i int, path string) error {
+	err := b.each(ctx, s, "reviewing", func(path string) error {
 		j, err := b.judge(ctx, ed, path)
 		if err != nil {
 			return err
@@ -61,8 +61,8 @@ func (b *batch) reviewAll(ctx context.Context, s streams, known map[string]bool)
 		if err != nil {
 			return err
 		}
-		all[i] = present.Reviewed{File: j.File, Shown: shown(path), Findings: j.Findings, Explained: explained,
-			Known: known, Requests: j.Requests, Series: j.Series}
+		all = append(all, present.Reviewed{File: j.File, Shown: shown(path), Findings: j.Findings, Explained: explained,
+			Known: known, Requests: j.Requests, Series: j.Series})
 		status = max(status, b.statusOf(s, ed, j, known))
 		return nil
 	})

@@ -32,7 +32,7 @@ func screen(ctx context.Context, s streams, args []string) (int, error) {
 	b.layManifests(bare)
 	ed := b.workspace.Edition()
 	var all []result.Screened
-	err = b.each(ctx, s, "screening", func(_ int, path string) error {
+	err = b.each(ctx, s, "screening", func(path string) error {
 		if request.DocumentKind(path) != request.ManifestDoc {
 			return nil
 		}
