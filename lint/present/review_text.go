@@ -5,6 +5,7 @@ import (
 	"io"
 	"slices"
 	"strings"
+	"unicode/utf8"
 
 	"lagwise/lint/evidence"
 	"lagwise/lint/finding"
@@ -82,25 +83,37 @@ func writeGroup(b *strings.Builder, doc *Reviewed, g group) {
 	if g.request == "" {
 		fmt.Fprintln(b, visible(doc.Shown))
 		for _, f := range g.findings {
-			place := fmt.Sprintf("%d:%d", f.Range.Start.Line+1, f.Range.Start.Character+1)
-			fmt.Fprintln(b, apart(fmt.Sprintf("  %-7s %s", place, visible(f.Message)), sign(f), textWidth))
+			place := fmt.Sprintf("  %-7s ", fmt.Sprintf("%d:%d", f.Range.Start.Line+1, f.Range.Start.Character+1))
+			writeMessage(b, place, f)
 			writeRepair(b, f)
 		}
 		return
 	}
 	e := doc.Explained[g.request]
 	fmt.Fprintln(b, apart(heading(g.request, e), at, textWidth))
-	fmt.Fprintln(b, apart("  "+visible(lead.Message), sign(lead), textWidth))
+	writeMessage(b, "  ", lead)
 	if e != nil {
 		writeSeries(b, e)
 	}
 	for _, f := range g.findings[1:] {
-		fmt.Fprintln(b, apart("  "+visible(f.Message), sign(f), textWidth))
+		writeMessage(b, "  ", f)
 	}
 	if e != nil {
 		writeSides(b, e)
 	}
 	writeApply(b, doc, g, e)
+}
+
+// writeMessage writes what a finding says behind its place; what does not fit
+// goes on below the message.
+func writeMessage(b *strings.Builder, place string, f finding.Finding) {
+	indent := strings.Repeat(" ", utf8.RuneCountInString(place))
+	for i, line := range told(indent, visible(f.Message), sign(f)) {
+		if i == 0 {
+			line = place + strings.TrimPrefix(line, indent)
+		}
+		fmt.Fprintln(b, line)
+	}
 }
 
 // writeRepair says which word would be right, where the finding knows.
@@ -187,7 +200,8 @@ func writeApply(b *strings.Builder, doc *Reviewed, g group, e *result.Explanatio
 			return
 		}
 	}
-	if e != nil && e.NoPreferred != "" {
+	said := func(f finding.Finding) bool { return f.Message == e.NoPreferred }
+	if e != nil && e.NoPreferred != "" && !slices.ContainsFunc(g.findings, said) {
 		fmt.Fprintf(b, "  %s\n", visible(e.NoPreferred))
 	}
 }
