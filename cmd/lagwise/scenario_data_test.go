@@ -172,9 +172,9 @@ func hostileText(kind string) (string, bool) {
 	case "huge": // above the limit of 64 MB
 		return strings.Repeat("# "+strings.Repeat("x", 1021)+"\n", 65<<10), true
 	case "invalid-utf8":
-		return "[[correlation]]\nname = \"\xff\xfe\"\nbetween = [\"a\", \"b\"]\n", true
+		return "[[correlation]]\nname = \"\xff\xfe\"\naim = \"association\"\nbetween = [\"rain\", \"gales\"]\n", true
 	case "nul":
-		return "[[correlation]]\nbetween = [\"a\x00\", \"b\"]\n", true
+		return "[[correlation]]\nquestion = \"a\x00b\"\naim = \"association\"\nbetween = [\"rain\", \"gales\"]\n", true
 	case "header-only":
 		return "year,eelgrass,boats\n", true
 	case "empty":

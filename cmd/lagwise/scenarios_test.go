@@ -39,7 +39,7 @@ func TestMain(m *testing.M) {
 func TestScenarios(t *testing.T) {
 	const folder = "../../testdata/scenarios"
 	files, err := filepath.Glob(folder + "/*.txtar")
-	if err != nil || len(files) < 1 {
+	if err != nil || len(files) < 30 {
 		t.Fatalf("%d scenarios in %s (%v)", len(files), folder, err)
 	}
 	data, err := filepath.Abs("../../testdata")

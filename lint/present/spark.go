@@ -31,9 +31,12 @@ func Spark(values []float64, width int) string {
 	return b.String()
 }
 
+// roundOff is the relative error of a mean: what varies by no more is flat.
+const roundOff = 1e-13
+
 func barOf(m, low, high float64) int {
 	span := high - low
-	if !(span > 0) || math.IsInf(span, 0) {
+	if !(span > roundOff*max(math.Abs(low), math.Abs(high))) || math.IsInf(span, 0) {
 		return len(bars) / 2
 	}
 	return min(len(bars)-1, int(float64(len(bars))*(m-low)/span))
