@@ -33,6 +33,10 @@ func TestNumbersAreCorrectlyRounded(t *testing.T) {
 		if !ok || end != len(text) || math.Float64bits(got) != math.Float64bits(want) {
 			t.Fatalf("%s: got %v (%v), want %v", text, got, ok, want)
 		}
+		got, end, ok = scanShort([]byte(text+",\n                        "), 0, ',', '.')
+		if !ok || end != len(text) || math.Float64bits(got) != math.Float64bits(want) {
+			t.Fatalf("%s, the short way: got %v (%v), want %v", text, got, ok, want)
+		}
 	}
 }
 
@@ -40,6 +44,9 @@ func TestWhatIsNotANumber(t *testing.T) {
 	for _, text := range []string{"", "-", "+", ".", "e5", "1e", "1e+", "1.2.3", "--1", "0x10", "1_000", "inf", "nan", "1e400", "12a", " 1", "1-2"} {
 		if v, _, ok := scanNumber([]byte(text+"\n"), 0, ',', '.'); ok {
 			t.Errorf("%q was read as %v", text, v)
+		}
+		if v, _, ok := scanShort([]byte(text+"\n                        "), 0, ',', '.'); ok {
+			t.Errorf("%q was read the short way as %v", text, v)
 		}
 		if v, ok := parsePlain([]byte(text), '.'); ok {
 			t.Errorf("%q was parsed as %v", text, v)

@@ -23,7 +23,9 @@ func makeAxis(t *table, plan axisPlan, declared request.Period) (a *Axis, order 
 	} else {
 		a.read(t, plan)
 	}
-	order = a.sort(t)
+	if a.Unit != Row || a.groups != nil {
+		order = a.sort(t)
+	}
 	if a.Unit == Year && plan.clock != nil && plan.clock.form == decimalForm {
 		a.fromDecimalYears()
 	}

@@ -161,7 +161,7 @@ func (t *table) takeRecord(text []byte, i int) (end, cells int, ok bool) {
 	width, row, values, delimiter, point := len(t.columns), t.rows, t.values, t.delimiter, t.point
 	for col := 0; ; col++ {
 		if col < width && t.plain[col] {
-			v, next, number := scanNumber(text, i, delimiter, point)
+			v, next, number := scanShort(text, i, delimiter, point)
 			if number && !t.codes.number(v) {
 				values[col][row] = v
 				if i = next; text[i] != delimiter {

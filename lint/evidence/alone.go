@@ -63,16 +63,18 @@ func (s *Store) fillAlone(ctx context.Context, one *Alone, record *dataset.Recor
 	}
 	one.Unit, one.Step, one.Per = got.Unit, record.Axis.StepText, record.Axis.Per()
 	req := request.Request{Kind: request.Correlation, Between: []string{got.Name}, Groups: "within", LeastShare: 0.8}
-	if one.Frame, one.Err = s.aligned(ctx, []*dataset.Series{got}, &req); one.Err != nil {
+	rows, err := s.aligned(ctx, []*dataset.Series{got}, &req)
+	if one.Err = err; err != nil {
 		return
 	}
+	one.Frame = rows.Frame
 	one.Missing = len(got.Values) - len(one.Frame.Positions)
-	if one.Profile, one.Err = s.profile(ctx, columnOf(one.Frame, 0), set); one.Err != nil {
+	if one.Profile, one.Err = s.profile(ctx, rows.column(0), set); one.Err != nil {
 		return
 	}
-	d, err := one.Frame.Transform(nil, []request.Transform{{Name: request.FirstDifferences}}, nil)
+	d, err := s.transformed(ctx, rows, nil, []request.Transform{{Name: request.FirstDifferences}}, nil)
 	if err == nil {
-		one.Differences, one.Err = s.profile(ctx, columnOf(d, 0), set)
+		one.Differences, one.Err = s.profile(ctx, d.column(0), set)
 	}
 }
 

@@ -27,8 +27,8 @@ type Case struct {
 }
 
 type framed struct {
-	frame *dataset.Frame
-	err   error
+	rows *rows
+	err  error
 }
 
 type fitted struct {

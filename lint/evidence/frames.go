@@ -17,8 +17,24 @@ const (
 
 // Levels returns the rows that the request uses, as measured. The error is a
 // *Unavailable, a *dataset.Mismatch or a *stats.Undefined.
-func (c *Case) Levels() (*dataset.Frame, error) {
-	return c.framed(levels, func() (*dataset.Frame, error) {
+func (c *Case) Levels() (*dataset.Frame, error) { return plain(c.levels()) }
+
+// Base returns the rows after the steps of on-each and the leading steps of
+// on that only restate what is measured.
+func (c *Case) Base() (*dataset.Frame, error) { return plain(c.base()) }
+
+// Used returns the rows after all transforms.
+func (c *Case) Used() (*dataset.Frame, error) { return plain(c.used()) }
+
+func plain(r *rows, err error) (*dataset.Frame, error) {
+	if err != nil {
+		return nil, err
+	}
+	return r.Frame, nil
+}
+
+func (c *Case) levels() (*rows, error) {
+	return c.framed(levels, func() (*rows, error) {
 		all, err := c.load()
 		if err != nil {
 			return nil, err
@@ -27,53 +43,53 @@ func (c *Case) Levels() (*dataset.Frame, error) {
 	})
 }
 
-// Base returns the rows after the steps of on-each and the leading steps of
-// on that only restate what is measured.
-func (c *Case) Base() (*dataset.Frame, error) {
-	return c.framed(base, func() (*dataset.Frame, error) {
-		frame, err := c.Levels()
+func (c *Case) base() (*rows, error) {
+	return c.framed(base, func() (*rows, error) {
+		r, err := c.levels()
 		if err != nil {
 			return nil, err
 		}
 		head, _ := SplitOn(c.req.On)
-		return frame.Transform(c.each(), head, nil)
+		if len(head) == 0 && len(c.req.OnEach) == 0 {
+			return r, nil
+		}
+		return c.store.transformed(c.ctx, r, c.each(), head, nil)
 	})
 }
 
-// Used returns the rows after all transforms.
-func (c *Case) Used() (*dataset.Frame, error) {
-	return c.framed(used, func() (*dataset.Frame, error) {
-		frame, err := c.Base()
+func (c *Case) used() (*rows, error) {
+	return c.framed(used, func() (*rows, error) {
+		r, err := c.base()
 		if err != nil {
 			return nil, err
 		}
 		_, tail := SplitOn(c.req.On)
 		if len(tail) == 0 {
-			return frame, nil
+			return r, nil
 		}
 		shapes, err := c.shapes(tail)
 		if err != nil {
 			return nil, err
 		}
-		return c.store.transformed(c.ctx, frame, tail, shapes)
+		return c.store.transformed(c.ctx, r, nil, tail, shapes)
 	})
 }
 
-func (c *Case) framed(which int, make func() (*dataset.Frame, error)) (*dataset.Frame, error) {
+func (c *Case) framed(which int, make func() (*rows, error)) (*rows, error) {
 	c.mu.Lock()
 	got := c.frames[which]
 	c.mu.Unlock()
 	if got != nil {
-		return got.frame, got.err
+		return got.rows, got.err
 	}
-	frame, err := make()
+	r, err := make()
 	c.note(err)
 	if err == nil || !passing(err) {
 		c.mu.Lock()
-		c.frames[which] = &framed{frame, err}
+		c.frames[which] = &framed{r, err}
 		c.mu.Unlock()
 	}
-	return frame, err
+	return r, err
 }
 
 // SplitOn parts the transforms into those that restate what is measured and
@@ -149,51 +165,47 @@ func Detrends(on []request.Transform) bool { return hasStep(on, request.Detrende
 // BaseProfile returns what is known of a series before its drift, season or
 // autocorrelation is removed.
 func (c *Case) BaseProfile(i int) (*Profile, error) {
-	frame, err := c.Base()
+	r, err := c.base()
 	if err != nil {
 		return nil, err
 	}
-	p, err := c.store.profile(c.ctx, columnOf(frame, i), c.Settings)
+	p, err := c.store.profile(c.ctx, r.column(i), c.Settings)
 	return p, c.note(err)
 }
 
 // UsedProfile returns what is known of a series after all transforms.
 func (c *Case) UsedProfile(i int) (*Profile, error) {
-	frame, err := c.Used()
+	r, err := c.used()
 	if err != nil {
 		return nil, err
 	}
-	col := columnOf(frame, i)
+	col := r.column(i)
 	col.around = Detrends(c.req.On) && !Differences(c.req.On) && !Prewhitens(c.req.On)
 	p, err := c.store.profile(c.ctx, col, c.Settings)
 	return p, c.note(err)
 }
 
-func columnOf(f *dataset.Frame, i int) column {
-	return column{values: f.Columns[i], at: f.Step, runs: f.Runs, season: f.Season}
-}
-
 // aligned aligns the series as the request asks, remembered.
-func (s *Store) aligned(ctx context.Context, all []*dataset.Series, req *request.Request) (*dataset.Frame, error) {
+func (s *Store) aligned(ctx context.Context, all []*dataset.Series, req *request.Request) (*rows, error) {
 	parts := []any{"aligned", req.From, req.Until, req.Every, req.Aggregate, req.LeastShare, req.YearStarts,
-		req.Tolerance, req.Lag, req.Kind, req.Predictors, req.Groups, req.GroupList, req.Between, req.Given, req.Response}
+		req.Tolerance, req.Lag, int(req.Kind), req.Columns(), req.Groups, req.GroupList}
 	if req.Grid != nil {
 		parts = append(parts, *req.Grid)
 	}
 	for _, one := range all {
 		parts = append(parts, one.Name, one.Digest, one.Season)
 	}
-	return remember(ctx, s.derived, keyOf(parts...), func(ctx context.Context) (*dataset.Frame, int64, error) {
+	return remember(ctx, s.derived, keyOf(parts...), func(ctx context.Context) (*rows, int64, error) {
 		frame, err := dataset.Align(ctx, all, req)
-		return frame, bytesOf(frame), err
+		return rowsOf(frame), bytesOf(frame), err
 	})
 }
 
-func (s *Store) transformed(ctx context.Context, f *dataset.Frame, on []request.Transform, shapes []dataset.Shape) (*dataset.Frame, error) {
-	k := keyOf("transformed", f.Digest, f.Names, f.Season, f.Removed, on, shapes)
-	return remember(ctx, s.derived, k, func(context.Context) (*dataset.Frame, int64, error) {
-		frame, err := f.Transform(nil, on, shapes)
-		return frame, bytesOf(frame), err
+func (s *Store) transformed(ctx context.Context, r *rows, each [][]request.Transform, on []request.Transform, shapes []dataset.Shape) (*rows, error) {
+	k := keyOf("transformed", r.Digest, r.Names, r.Season, r.Removed, each, on, shapes)
+	return remember(ctx, s.derived, k, func(context.Context) (*rows, int64, error) {
+		frame, err := r.Transform(each, on, shapes)
+		return rowsOf(frame), bytesOf(frame), err
 	})
 }
 

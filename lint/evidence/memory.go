@@ -33,7 +33,15 @@ func keyOf(parts ...any) key {
 		case [32]byte:
 			put(v[:])
 		case []float64:
-			put(floatBytes(v))
+			put(wordBytes(v, math.Float64bits))
+		case []int:
+			put(wordBytes(v, func(i int) uint64 { return uint64(i) }))
+		case int:
+			binary.LittleEndian.PutUint64(word[:], uint64(v))
+			h.Write(word[:])
+		case float64:
+			binary.LittleEndian.PutUint64(word[:], math.Float64bits(v))
+			h.Write(word[:])
 		default:
 			put(fmt.Appendf(nil, "%#v", v))
 		}
@@ -41,10 +49,10 @@ func keyOf(parts ...any) key {
 	return key(h.Sum(nil))
 }
 
-func floatBytes(x []float64) []byte {
+func wordBytes[T any](x []T, bits func(T) uint64) []byte {
 	b := make([]byte, 8*len(x))
 	for i, v := range x {
-		binary.LittleEndian.PutUint64(b[8*i:], math.Float64bits(v))
+		binary.LittleEndian.PutUint64(b[8*i:], bits(v))
 	}
 	return b
 }

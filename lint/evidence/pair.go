@@ -18,14 +18,14 @@ func (u *Unserved) Error() string { return u.Message }
 
 // Pair returns the correlation that the request asks of two of its columns.
 func (c *Case) Pair(i, j int) (association.Result, error) {
-	frame, err := c.Used()
+	r, err := c.used()
 	if err != nil {
 		return association.Result{}, err
 	}
 	if err := c.served(); err != nil {
 		return association.Result{}, err
 	}
-	got, err := c.store.correlated(c.ctx, frame, i, j, c.Given(), &c.req)
+	got, err := c.store.correlated(c.ctx, r, i, j, c.Given(), &c.req)
 	return got, c.note(err)
 }
 
@@ -39,15 +39,15 @@ func (c *Case) served() error {
 	return nil
 }
 
-func (s *Store) correlated(ctx context.Context, f *dataset.Frame, i, j int, given []int, req *request.Request) (association.Result, error) {
-	parts := []any{"correlated", f.Columns[i], f.Columns[j], f.Runs, f.Removed, req.Coefficient, req.Inference, Prewhitens(req.On), req.RemoveFrom}
+func (s *Store) correlated(ctx context.Context, f *rows, i, j int, given []int, req *request.Request) (association.Result, error) {
+	parts := []any{"correlated", f.key(i), f.key(j), req.Coefficient, req.Inference, Prewhitens(req.On), req.RemoveFrom}
 	controls := make([][]float64, len(given))
 	for k, g := range given {
 		controls[k] = f.Columns[g]
-		parts = append(parts, controls[k])
+		parts = append(parts, f.key(g))
 	}
 	return remember(ctx, s.derived, keyOf(parts...), func(context.Context) (association.Result, int64, error) {
-		r, err := correlate(f, f.Columns[i], f.Columns[j], controls, req)
+		r, err := correlate(f.Frame, f.Columns[i], f.Columns[j], controls, req)
 		return r, 128, err
 	})
 }
@@ -89,11 +89,11 @@ func (c *Case) Detectable(r association.Result) *float64 {
 // EffectiveN returns the effective n of two columns as they are used, whether
 // or not the request asks for it.
 func (c *Case) EffectiveN(i, j int) (float64, error) {
-	frame, err := c.Used()
+	frame, err := c.used()
 	if err != nil {
 		return 0, err
 	}
-	n, err := remember(c.ctx, c.store.derived, keyOf("effective-n", frame.Columns[i], frame.Columns[j], frame.Runs),
+	n, err := remember(c.ctx, c.store.derived, keyOf("effective-n", frame.key(i), frame.key(j)),
 		func(context.Context) (float64, int64, error) {
 			n, err := association.EffectiveN(frame.Columns[i], frame.Columns[j], frame.Runs)
 			return n, 8, err

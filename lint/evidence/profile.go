@@ -49,6 +49,7 @@ type column struct {
 	runs   []int // end of each stretch without a gap
 	season int   // steps, 0 none
 	around bool  // the fitted line was taken off
+	digest key   // of all of the above but around
 }
 
 func (c column) stretches() series.Runs {
@@ -62,7 +63,7 @@ func (c column) stretches() series.Runs {
 }
 
 func (c column) key(what string, s Settings) key {
-	return keyOf(what, c.values, c.at, c.runs, c.season, c.around, s.Alpha, s.ADFLags, s.KPSSBandwidth, s.LeastNVerdict)
+	return keyOf(what, c.digest, c.around, s.Alpha, s.ADFLags, s.KPSSBandwidth, s.LeastNVerdict, s.Limit("seasonal-strength", 0))
 }
 
 // profile returns the profile of a column, remembered.

@@ -55,13 +55,13 @@ func (s Scatter) Reason(set Settings) string {
 
 // Scatter returns the look of two columns as they are used.
 func (c *Case) Scatter(i, j int) (Scatter, error) {
-	frame, err := c.Used()
+	frame, err := c.used()
 	if err != nil {
 		return Scatter{}, err
 	}
-	k := keyOf("scatter", frame.Columns[i], frame.Columns[j], frame.Runs, frame.Step, frame.Season)
+	k := keyOf("scatter", frame.key(i), frame.key(j))
 	got, err := remember(c.ctx, c.store.derived, k, func(context.Context) (Scatter, int64, error) {
-		s, err := look(frame, i, j)
+		s, err := look(frame.Frame, i, j)
 		return s, 96, err
 	})
 	return got, c.note(err)

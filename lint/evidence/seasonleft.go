@@ -25,16 +25,16 @@ func (s SeasonLeft) Left(set Settings) bool {
 
 // UsedSeason looks for a season in one series as it is used.
 func (c *Case) UsedSeason(i int) (SeasonLeft, error) {
-	frame, err := c.Used()
+	r, err := c.used()
 	if err != nil {
 		return SeasonLeft{}, err
 	}
-	return c.seasonLeft(columnOf(frame, i))
+	return c.seasonLeft(r.column(i))
 }
 
 // ResidualSeason looks for a season in the residuals of the fit.
 func (c *Case) ResidualSeason() (SeasonLeft, error) {
-	frame, err := c.Used()
+	r, err := c.used()
 	if err != nil {
 		return SeasonLeft{}, err
 	}
@@ -42,8 +42,9 @@ func (c *Case) ResidualSeason() (SeasonLeft, error) {
 	if err != nil {
 		return SeasonLeft{}, err
 	}
-	col := columnOf(frame, 0)
+	col := r.column(0)
 	col.values = fit.Residuals
+	col.digest = keyOf(col.digest, fit.Residuals)
 	return c.seasonLeft(col)
 }
 
@@ -52,7 +53,7 @@ func (c *Case) seasonLeft(col column) (SeasonLeft, error) {
 	if col.season < 2 || s.N < leastSeasons*col.season {
 		return s, nil
 	}
-	got, err := remember(c.ctx, c.store.derived, keyOf("season-left", col.values, col.runs, col.season),
+	got, err := remember(c.ctx, c.store.derived, keyOf("season-left", col.digest),
 		func(context.Context) (SeasonLeft, int64, error) {
 			qs, r, err := series.QS(col.stretches(), col.season)
 			s.QS, s.R = qs, r

@@ -8,7 +8,7 @@ const edge = 18.0
 // filters whiten the errors with partial autocorrelations tanh u. For t lags:
 // sums[t] are the running sums of the prediction-error filter (Durbin 1960),
 // weights[t] is the innovation variance over that of the row, and slopes[v] and
-// logWeightSlopes[v] are their derivatives by u[v].
+// logWeightSlopes[v] are their derivatives by u[v] once differentiated.
 type filters struct {
 	sums            [][]float64
 	weights         []float64
@@ -28,9 +28,6 @@ func newFilters(u []float64) *filters {
 		c := away(u[t]) * away(-u[t])
 		f.weights[t] = f.weights[t+1] * c
 		f.logWeights[t] = f.logWeights[t+1] + math.Log(c)
-	}
-	for v := range u {
-		f.differentiate(u, v)
 	}
 	return f
 }
@@ -52,6 +49,7 @@ func lengthen(a []float64, r, c float64) []float64 {
 	return out
 }
 
+// differentiate fills in the derivatives by u[v].
 func (f *filters) differentiate(u []float64, v int) {
 	p := len(u)
 	slopes := make([][]float64, p+1)

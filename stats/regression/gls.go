@@ -7,7 +7,6 @@ import (
 	"gonum.org/v1/gonum/floats"
 
 	"lagwise/stats"
-	"lagwise/stats/distribution"
 )
 
 // GLSFit is a regression whose errors are an autoregression. Sigma is the
@@ -116,9 +115,9 @@ func (l *likelihood) fit(d Design, best point) *GLSFit {
 	floats.AddTo(onto, b.onto, e.shift)
 	g.estimates(onto)
 	df := n - float64(k+d.Removed)
-	g.setCovariance(scale(e.inverse, e.squares/df))
+	g.setCovariance(scale(e.inverse(), e.squares/df))
 	g.residuals(d, e.shift)
-	g.Sigma = saturate(math.Ldexp(math.Sqrt(e.squares/divisor/e.weights[0]), b.yUnit))
+	g.Sigma = saturate(math.Ldexp(math.Sqrt(e.squares/divisor/e.filters.weights[0]), b.yUnit))
 	g.RSS = saturate(math.Ldexp(e.squares, 2*b.yUnit))
 	g.Normalized = l.normalized(e, b.errors(e.shift), math.Sqrt(e.squares/divisor))
 	g.buse(df)
@@ -154,12 +153,4 @@ func scale(m [][]float64, by float64) [][]float64 {
 		floats.Scale(by, row)
 	}
 	return m
-}
-
-// profile is the interval of partial autocorrelation i in which the likelihood,
-// maximised over the other parameters, is within the chi-square bound.
-func (l *likelihood) profile(best point, i int, level float64) [2]float64 {
-	z := distribution.NormalQuantile((1 + level) / 2)
-	floor := best.value - z*z/2
-	return [2]float64{l.crossing(best, i, -1, floor), l.crossing(best, i, 1, floor)}
 }

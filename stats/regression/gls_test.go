@@ -26,13 +26,13 @@ func TestGradientAgainstDifferences(t *testing.T) {
 		for _, reml := range []bool{false, true} {
 			l := newLikelihood(b, d.Runs, order, reml)
 			u := []float64{0.7, -0.4, 0.3, 0.2}[:order]
-			g := l.evaluate(u).gradient
+			g := l.gradientAt(u)
 			for v := range u {
 				const h = 1e-5
 				up, down := append([]float64(nil), u...), append([]float64(nil), u...)
 				up[v] += h
 				down[v] -= h
-				want := (l.evaluate(up).value - l.evaluate(down).value) / (2 * h)
+				want := (l.value(up) - l.value(down)) / (2 * h)
 				if math.Abs(g[v]-want) > 1e-6*(1+math.Abs(want)) {
 					t.Errorf("order %d, reml %v, parameter %d: gradient %v, differences %v", order, reml, v, g[v], want)
 				}

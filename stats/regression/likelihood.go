@@ -135,20 +135,17 @@ func (l *likelihood) offset() float64 {
 // evaluation is the likelihood at some parameters, without the constants of
 // offset.
 type evaluation struct {
-	value    float64
-	gradient []float64
-	shift    []float64   // coefficients on the basis less the least-squares ones
-	inverse  [][]float64 // (X'R^-1 X)^-1 on the basis
-	squares  float64     // e'R^-1 e
-	weights  []float64   // 1/variance of a row with a filter of t lags
-	filters  [][]float64 // A, by number of lags
+	value   float64
+	shift   []float64 // coefficients on the basis less the least-squares ones
+	squares float64   // e'R^-1 e
+	factor  []float64 // Cholesky factor of X'R^-1 X, packed
+	filters *filters
 }
 
-// evaluate computes value, estimates and gradient: O(order^2 K^2) after the
-// one pass.
+// evaluate computes value and estimates: O(order^2 K^2) after the one pass.
 func (l *likelihood) evaluate(u []float64) evaluation {
 	f := newFilters(u)
-	e := evaluation{weights: f.weights, filters: f.sums}
+	e := evaluation{filters: f}
 	w := make([]float64, l.width*(l.width+1)/2)
 	for _, b := range l.blocks {
 		floats.AddScaled(w, f.weights[b.t]*f.sums[b.t][b.i]*f.sums[b.t][b.j], b.sums)
@@ -160,14 +157,17 @@ func (l *likelihood) evaluate(u []float64) evaluation {
 	n := l.effective()
 	e.value = -n/2*math.Log(e.squares) + floats.Dot(l.counts, f.logWeights)/2
 	if l.reml {
-		e.value -= e.logDet(w, l.width-1)
+		e.value -= logDet(w, l.width-1)
 	}
-	l.slope(&e, f)
+	e.factor = w
 	return e
 }
 
+// value is the likelihood alone.
+func (l *likelihood) value(u []float64) float64 { return l.evaluate(u).value }
+
 // solve takes the packed sums of the whitened columns apart: a Cholesky
-// factor in place, coefficients, inverse and residual sum of squares.
+// factor in place, coefficients and residual sum of squares.
 func (e *evaluation) solve(w []float64, k int) bool {
 	if !cholesky(w, k) {
 		return false
@@ -179,18 +179,24 @@ func (e *evaluation) solve(w []float64, k int) bool {
 	forward(w, e.shift)
 	e.squares -= floats.Dot(e.shift, e.shift)
 	backward(w, e.shift)
-	e.inverse = make([][]float64, k)
-	for i := range e.inverse {
-		column := make([]float64, k)
-		column[i] = 1
-		forward(w, column)
-		backward(w, column)
-		e.inverse[i] = column
-	}
 	return e.squares > 1e-13*whole
 }
 
-func (e *evaluation) logDet(factor []float64, k int) float64 {
+// inverse is (X'R^-1 X)^-1 on the basis.
+func (e *evaluation) inverse() [][]float64 {
+	out := make([][]float64, len(e.shift))
+	for i := range out {
+		column := make([]float64, len(out))
+		column[i] = 1
+		forward(e.factor, column)
+		backward(e.factor, column)
+		out[i] = column
+	}
+	return out
+}
+
+// logDet is half the log determinant of the matrix with the given factor.
+func logDet(factor []float64, k int) float64 {
 	var s float64
 	for i := range k {
 		s += math.Log(factor[i*(i+1)/2+i])
@@ -198,28 +204,43 @@ func (e *evaluation) logDet(factor []float64, k int) float64 {
 	return s
 }
 
-// slope is the gradient with respect to u: the derivative of each sum's
-// coefficient times the derivative of the value by that sum.
-func (l *likelihood) slope(e *evaluation, f *filters) {
-	k := l.width - 1
+// gradient is that of the value with respect to u: the derivative of each
+// sum's coefficient times the derivative of the value by that sum.
+func (l *likelihood) gradient(u []float64, e evaluation) []float64 {
+	f := e.filters
 	n := l.effective()
 	direction := append(append([]float64(nil), e.shift...), -1)
-	e.gradient = make([]float64, l.order)
-	for v := range e.gradient {
-		e.gradient[v] = floats.Dot(l.counts, f.logWeightSlopes[v]) / 2
+	var inverse [][]float64
+	if l.reml {
+		inverse = e.inverse()
+	}
+	out := make([]float64, l.order)
+	for v := range out {
+		f.differentiate(u, v)
+		out[v] = floats.Dot(l.counts, f.logWeightSlopes[v]) / 2
 	}
 	for _, b := range l.blocks {
 		s := -n / 2 / e.squares * quadratic(b.sums, direction)
 		if l.reml {
-			s -= trace(b.sums, e.inverse, k) / 2
+			s -= trace(b.sums, inverse, len(inverse)) / 2
 		}
 		a, w := f.sums[b.t], f.weights[b.t]
-		for v := range e.gradient {
+		for v := range out {
 			da := f.slopes[v][b.t]
 			change := da[b.i]*a[b.j] + a[b.i]*da[b.j] + f.logWeightSlopes[v][b.t]*a[b.i]*a[b.j]
-			e.gradient[v] += s * w * change
+			out[v] += s * w * change
 		}
 	}
+	return out
+}
+
+// gradientAt is the gradient, nil where the likelihood has no value.
+func (l *likelihood) gradientAt(u []float64) []float64 {
+	e := l.evaluate(u)
+	if math.IsInf(e.value, -1) {
+		return nil
+	}
+	return l.gradient(u, e)
 }
 
 // normalized are the whitened errors over their standard deviation.
@@ -229,12 +250,12 @@ func (l *likelihood) normalized(e evaluation, errors []float64, sd float64) []fl
 	for _, end := range l.runs {
 		for row := from; row < end; row++ {
 			t := min(row-from, l.order)
-			a := e.filters[t]
+			a := e.filters.sums[t]
 			v := a[t] * errors[row-t]
 			for i := range t {
 				v += a[i] * (errors[row-i] - errors[row-i-1])
 			}
-			out[row] = v * math.Sqrt(e.weights[t]) / sd
+			out[row] = v * math.Sqrt(e.filters.weights[t]) / sd
 		}
 		from = end
 	}

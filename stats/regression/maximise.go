@@ -19,7 +19,7 @@ type point struct {
 // starting points.
 func (l *likelihood) maximise(what string) (point, error) {
 	if l.order == 0 {
-		return point{[]float64{}, l.evaluate(nil).value}, nil
+		return point{[]float64{}, l.value(nil)}, nil
 	}
 	best := point{value: math.Inf(-1)}
 	for _, start := range l.starts() {
@@ -61,7 +61,7 @@ func (l *likelihood) starts() []point {
 		for _, second := range []float64{-1.5, -0.5, 0, 0.5, 1.5, 3} {
 			u := make([]float64, l.order)
 			u[0], u[1] = first, second
-			all = append(all, point{u, l.evaluate(u).value})
+			all = append(all, point{u, l.value(u)})
 		}
 	}
 	slices.SortStableFunc(all, func(a, b point) int {
@@ -79,7 +79,7 @@ func (l *likelihood) starts() []point {
 func (l *likelihood) scan() []point {
 	var all, peaks []point
 	for _, u := range grid() {
-		all = append(all, point{[]float64{u}, l.evaluate([]float64{u}).value})
+		all = append(all, point{[]float64{u}, l.value([]float64{u})})
 	}
 	for i, p := range all {
 		if (i == 0 || p.value >= all[i-1].value) && (i == len(all)-1 || p.value >= all[i+1].value) {
@@ -93,13 +93,17 @@ func (l *likelihood) scan() []point {
 // (none: -1) kept as it is. A step is shortened until the value rises.
 func (l *likelihood) climb(start point, held int) point {
 	at := point{slices.Clone(start.u), start.value}
+	if held >= 0 && len(at.u) == 1 {
+		at.value = l.value(at.u)
+		return at
+	}
 	for range 80 {
 		e := l.evaluate(at.u)
 		if math.IsInf(e.value, -1) {
 			return point{at.u, e.value}
 		}
 		at.value = e.value
-		step := l.newton(at.u, e.gradient, held)
+		step := l.newton(at.u, l.gradient(at.u, e), held)
 		next, size := l.shorten(at, step)
 		if size < 1e-12 {
 			break
@@ -122,7 +126,7 @@ func (l *likelihood) shorten(at point, step []float64) (point, float64) {
 		if size == 0 {
 			break
 		}
-		if v := l.evaluate(u).value; v > at.value || part == 1 && v >= at.value-1e-13*math.Abs(at.value) && size < 1e-4 {
+		if v := l.value(u); v > at.value || part == 1 && v >= at.value-1e-13*math.Abs(at.value) && size < 1e-4 {
 			return point{u, v}, size
 		}
 	}
@@ -149,7 +153,7 @@ func (l *likelihood) newton(u, gradient []float64, held int) []float64 {
 		up, down := slices.Clone(u), slices.Clone(u)
 		up[i] += h
 		down[i] -= h
-		gu, gd := l.evaluate(up).gradient, l.evaluate(down).gradient
+		gu, gd := l.gradientAt(up), l.gradientAt(down)
 		for b := a; b < len(free); b++ {
 			if gu != nil && gd != nil {
 				hessian.SetSym(a, b, -(gu[free[b]]-gd[free[b]])/(2*h))
@@ -187,38 +191,4 @@ func damped(h *mat.SymDense, gradient []float64, free []int) *mat.VecDense {
 		add = max(4*add, 1e-6*top, 1e-300)
 	}
 	return s
-}
-
-// crossing is the partial autocorrelation, on the given side of the best one,
-// where the profile likelihood of parameter i falls through floor; -1 or 1
-// when it does not.
-func (l *likelihood) crossing(best point, i int, side, floor float64) float64 {
-	inside := best
-	outside := best
-	for step := 0.25; ; step *= 1.5 {
-		u := slices.Clone(inside.u)
-		u[i] = max(-edge, min(edge, u[i]+side*step))
-		outside = l.climb(point{u, 0}, i)
-		if outside.value < floor {
-			break
-		}
-		inside = outside
-		if math.Abs(inside.u[i]) >= edge {
-			return side
-		}
-	}
-	for range 100 {
-		lo, hi := math.Tanh(inside.u[i]), math.Tanh(outside.u[i])
-		if math.Abs(hi-lo) < 1e-9 {
-			break
-		}
-		u := slices.Clone(inside.u)
-		u[i] = (inside.u[i] + outside.u[i]) / 2
-		if mid := l.climb(point{u, 0}, i); mid.value < floor {
-			outside = mid
-		} else {
-			inside = mid
-		}
-	}
-	return math.Tanh((inside.u[i] + outside.u[i]) / 2)
 }
