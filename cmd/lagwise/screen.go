@@ -37,6 +37,11 @@ func screen(ctx context.Context, s streams, args []string) (int, error) {
 			return nil
 		}
 		got, err := ed.Screen(ctx, path)
+		if slices.Contains(bare, strings.TrimSuffix(path, manifestEnding)) {
+			for i := range got {
+				got[i].Manifest = strings.TrimSuffix(got[i].Manifest, manifestEnding)
+			}
+		}
 		all = append(all, got...)
 		return err
 	})

@@ -55,7 +55,7 @@ func (h *hearing) asking(ctx context.Context, i int, d depth) *asking {
 
 func (a *asking) newCase(ctx context.Context) *evidence.Case {
 	return a.ed.engine.store.Case(ctx, evidence.Bound{Asked: a.asked, Series: a.series,
-		Roots: a.ed.guard(a.file.root), Settings: a.lab.settings})
+		Roots: a.ed.guard(a.file.root), Settings: a.lab.settings, Glance: a.glance})
 }
 
 // concerns reports whether a finding of the document lies in the text of the
@@ -80,12 +80,31 @@ func (a *asking) hear(ctx context.Context) {
 	if !a.computable {
 		return
 	}
+	k, known := a.fullKey()
+	if before, ok := a.ed.engine.heard.get(k); known && ok {
+		a.replay(before)
+		a.ed.engine.spoken.put(a.textKey(), before)
+		return
+	}
 	a.said = a.ask(ctx, lint.OfRequest, a.inquiryOf(a.asked.Request, a.c), nil)
-	changed := a.compareData()
+	now := spoken{a.clone(), a.asked.At.Start, a.compareData()}
 	if ctx.Err() == nil {
-		a.ed.engine.spoken.put(a.textKey(), spoken{a.clone(), a.asked.At.Start, changed})
+		a.ed.engine.spoken.put(a.textKey(), now)
+		if known && len(a.broken) == 0 {
+			a.ed.engine.heard.put(k, now)
+		}
 	}
 	a.weigh(a.findings, a.own)
+}
+
+// fullKey digests everything that bears on what the rules say of the request:
+// its text and documents, and the data as they are on disk now. It is unknown
+// while the data cannot be read.
+func (a *asking) fullKey() (key, bool) {
+	data, err := a.c.DataDigest()
+	whole := a.textKey()
+	text := string(whole[:])
+	return digest(text, string(data[:])), err == nil
 }
 
 // compareData marks the deviations that were given for other data, and

@@ -41,7 +41,8 @@ type Engine struct {
 	outcomes   func(*evidence.Case) ([]*result.Outcome, error)
 
 	headers remembered[[]*request.Series]
-	spoken  remembered[spoken]
+	spoken  remembered[spoken] // by text: what is known at once
+	heard   remembered[spoken] // by text and data: what need not be asked again
 }
 
 // New returns an engine.

@@ -7,6 +7,7 @@ import (
 
 	"lagwise/lint"
 	"lagwise/lint/dataset"
+	"lagwise/lint/evidence"
 	"lagwise/lint/request"
 )
 
@@ -29,6 +30,7 @@ type reading struct {
 	whole    bool    // all series of all manifests are known
 	around   string  // digest of the documents that bear on every request
 	devs     []*deviation
+	glance   *evidence.Glance // at the data, the same for all requests
 }
 
 // read binds a document to its surroundings. The error is that of a document
@@ -41,7 +43,7 @@ func (ed *Edition) read(ctx context.Context, path string, d depth) (*reading, er
 		return nil, err
 	}
 	s := ed.snapshot(path)
-	r := &reading{ed: ed, file: s, lab: ed.lab(s.path)}
+	r := &reading{ed: ed, file: s, lab: ed.lab(s.path), glance: evidence.NewGlance()}
 	if s.err != nil {
 		if !isTooLarge(s.err) {
 			return nil, s.err

@@ -20,6 +20,11 @@ func (a *asking) recall() {
 	}
 	before, known := a.ed.engine.spoken.get(a.textKey())
 	a.complete = known
+	a.replay(before)
+}
+
+// replay says again what was said of the same text.
+func (a *asking) replay(before spoken) {
 	a.said = before.moved(a.file.file, a.asked.At.Start)
 	for _, d := range a.own {
 		d.changed = slices.Contains(before.changed, d.Data)

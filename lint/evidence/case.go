@@ -110,7 +110,7 @@ func (c *Case) load() ([]*dataset.Series, error) {
 	for _, name := range c.Names() {
 		i := slices.IndexFunc(c.Series, func(b BoundSeries) bool { return b.Name == name })
 		b := c.Series[i]
-		s, err := c.store.loaded(c.ctx, c.Roots, b)
+		s, err := c.store.glimpsed(c.ctx, c.Bound, b)
 		if err != nil {
 			return nil, c.note(seriesError(b.Name, err))
 		}

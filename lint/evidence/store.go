@@ -1,7 +1,6 @@
 package evidence
 
 import (
-	"context"
 	"path/filepath"
 
 	"lagwise/lint/dataset"
@@ -26,6 +25,7 @@ type Bound struct {
 	Series   []BoundSeries // in the order of Asked.Series()
 	Roots    *dataset.Roots
 	Settings Settings
+	Glance   *Glance // nil: every case looks at the data for itself
 }
 
 // BoundSeries is one series of a request and where it was found.
@@ -36,19 +36,6 @@ type BoundSeries struct {
 	Folder string
 	Record *request.Record
 	Series *request.Series
-}
-
-// loaded returns the series with its values; a *dataset.Trouble says why not.
-func (s *Store) loaded(ctx context.Context, roots *dataset.Roots, b BoundSeries) (*dataset.Series, error) {
-	record, err := s.data.Record(ctx, roots, b.Folder, b.Record)
-	if err != nil {
-		return nil, err
-	}
-	got, trouble := record.Series(b.Series, b.Record)
-	if trouble != nil {
-		return nil, trouble
-	}
-	return got, nil
 }
 
 // manifestFolder returns the absolute folder of a manifest below a root.
