@@ -77,7 +77,7 @@ func (s *Store) profile(ctx context.Context, c column, set Settings) (*Profile, 
 func newProfile(ctx context.Context, c column, set Settings) *Profile {
 	runs := c.stretches()
 	p := &Profile{N: len(c.values), Longest: runs.Longest()}
-	if moments, err := series.Describe(c.values); err == nil && moments.Min == moments.Max {
+	if _, err := series.Describe(c.values); IsConstant(err) {
 		p.Verdict = Constant
 		return p
 	}

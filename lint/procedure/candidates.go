@@ -97,7 +97,11 @@ func (f Facts) correlate(on []request.Transform, inference string) Candidate {
 	return Candidate{Request: r, Title: title(r)}
 }
 
-// differenced is the usual differencing of the request's series.
+// differenced is the usual differencing of the request's series. A fixed
+// season is taken off the differences, never off the levels before them: the
+// seasonal means of a level that moves through the year hold a twelfth of its
+// yearly movement each, and taking them off first would leave that movement
+// as a jump at every turn of the year, in all series alike.
 func (f Facts) differenced() []request.Transform {
 	head, _ := evidence.SplitOn(f.Request.On)
 	step := request.FirstDifferences
@@ -106,15 +110,21 @@ func (f Facts) differenced() []request.Transform {
 	}
 	switch f.Season {
 	case FixedSeason:
-		return join(head, request.Anomalies, step)
+		return join(head, step, request.Anomalies)
 	case StochasticSeason:
 		return join(head, request.SeasonalDifferences, step)
 	}
 	return join(head, step)
 }
 
+// twice differences once more, before a season is taken off.
 func twice(on []request.Transform) []request.Transform {
-	return join(on, on[len(on)-1].Name)
+	for i, t := range on {
+		if evidence.Differences(on[i : i+1]) {
+			return slices.Insert(slices.Clone(on), i, t)
+		}
+	}
+	return on
 }
 
 func join(head []request.Transform, names ...string) []request.Transform {
