@@ -23,7 +23,7 @@ var autocorrelatedLevels = lint.Rule{
 	Run: func(q *lint.Inquiry) {
 		r := q.Case.Req()
 		_, tail := evidence.SplitOn(r.On)
-		if r.Kind != request.Correlation || r.Inference != "usual" || len(tail) > 0 || drifts(q) {
+		if r.Kind != request.Correlation || r.Inference != "usual" || len(tail) > 0 || drifts(q) || seasonal(q) {
 			return
 		}
 		reportDependence(q, "Neighbouring values resemble each other")

@@ -36,6 +36,17 @@ var leftoverSeason = lint.Rule{
 	},
 }
 
+// seasonal reports whether a series of the request has a material season: what
+// follows from it is not said again.
+func seasonal(q *lint.Inquiry) bool {
+	for i := range q.Case.Names() {
+		if p, err := q.Case.BaseProfile(i); err == nil && p.Season.Material {
+			return true
+		}
+	}
+	return false
+}
+
 // reportLevelSeason speaks of series that have a material season.
 func reportLevelSeason(q *lint.Inquiry) {
 	f := place(q, "on")
