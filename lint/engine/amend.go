@@ -7,6 +7,7 @@ import (
 	"slices"
 	"strings"
 
+	"lagwise/lint"
 	"lagwise/lint/document"
 	"lagwise/lint/finding"
 )
@@ -99,7 +100,7 @@ func (ed *Edition) amend(ctx context.Context, path string, o AmendOptions) Amend
 func (m *amending) choose(ed *Edition, j *Judgement) []finding.Edit {
 	var edits []finding.Edit
 	took := map[string]bool{}
-	for _, f := range j.Findings {
+	for _, f := range ed.textFirst(j.Findings) {
 		r := preferredOf(f)
 		if r == nil || f.Deviation != nil || !m.wanted(f) || took[f.Request] && f.Request != "" || m.done[f.Request] {
 			continue
@@ -121,6 +122,21 @@ func (m *amending) choose(ed *Edition, j *Judgement) []finding.Edit {
 		m.Applied = append(m.Applied, strings.TrimPrefix(f.Request+": "+r.Title, ": "))
 	}
 	return edits
+}
+
+// textFirst puts the findings about the text before those about the data: a
+// key that is mended may change what the request asks.
+func (ed *Edition) textFirst(all []finding.Finding) []finding.Finding {
+	all = slices.Clone(all)
+	slices.SortStableFunc(all, func(a, b finding.Finding) int { return ed.aboutData(a) - ed.aboutData(b) })
+	return all
+}
+
+func (ed *Edition) aboutData(f finding.Finding) int {
+	if rule := ed.engine.byName[f.Rule]; rule != nil && rule.Need == lint.Data {
+		return 1
+	}
+	return 0
 }
 
 func (m *amending) wanted(f finding.Finding) bool {

@@ -55,7 +55,7 @@ func qualified(b evidence.BoundSeries) string { return b.Manifest.Name + ":" + b
 // when all manifests could be read: what follows from a missing one is not
 // said again.
 func (b *binder) bind(asked *request.Asked) (bound, []request.Problem) {
-	got := bound{asked: asked, ready: true}
+	got := bound{asked: asked, ready: asked.Whole()}
 	var problems []request.Problem
 	for _, name := range asked.Series() {
 		found := b.places[name]

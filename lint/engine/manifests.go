@@ -52,7 +52,7 @@ func noManifest(written string, err error) string {
 	case request.DocumentKind(written) != request.ManifestDoc:
 		return fmt.Sprintf("%q is no manifest: manifests are named NAME.series.toml.", written)
 	}
-	return fmt.Sprintf("There is no manifest at %q, seen from the folder of this analysis. Correct the path, or draft it with `lagwise begin`.", written)
+	return fmt.Sprintf("There is no manifest at %q, seen from the folder of this analysis. Correct the path, or write it: [record.NAME] with file = \"…\" is enough to begin.", written)
 }
 
 func (ed *Edition) foundSources(ctx context.Context, s *snapshot, d depth) ([]source, []request.Problem) {
@@ -64,7 +64,7 @@ func (ed *Edition) foundSources(ctx context.Context, s *snapshot, d depth) ([]so
 		return all, nil
 	}
 	return nil, []request.Problem{{Rule: "missing-manifest", At: s.analysis().Requests[0].Header,
-		Message: "There is no manifest in the folder of this analysis, or in any above it below the root. Draft one with `lagwise begin FILE`, or name one in `manifests`."}}
+		Message: "There is no manifest in the folder of this analysis, or in any above it below the root. Write one, NAME.series.toml with [record.NAME] and file = \"…\", or name one in `manifests`."}}
 }
 
 // nearestManifests returns the manifests of the nearest folder that has some.

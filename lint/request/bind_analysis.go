@@ -150,11 +150,11 @@ func (c *checker) correlation(a *Asked, r reader) {
 func (c *checker) regression(a *Asked, r reader) {
 	a.Response = r.text("response", "")
 	if n := r.node("response"); n != nil {
-		a.Names["response"] = []document.Span{n.At}
+		a.Names[a.Response] = append(a.Names[a.Response], n.At)
 	}
 	for _, p := range c.predictors(r) {
 		a.Predictors = append(a.Predictors, p.Predictor)
-		a.Names["predictors"] = append(a.Names["predictors"], p.name)
+		a.Names[p.Series] = append(a.Names[p.Series], p.name)
 	}
 	c.process(a, r)
 	a.Likelihood = r.text("likelihood", "reml")
@@ -206,9 +206,13 @@ func (a *Asked) namesIn(r reader, key string) []string {
 	if n == nil {
 		return nil
 	}
-	items := r.items(n)
-	a.Names[key] = spans(items)
-	return r.list(key)
+	names := r.list(key)
+	for i, item := range r.items(n) {
+		if i < len(names) {
+			a.Names[names[i]] = append(a.Names[names[i]], item.At)
+		}
+	}
+	return names
 }
 
 // namedPredictor is a predictor and where its series is named.

@@ -109,13 +109,13 @@ func TestPlacesOfARequest(t *testing.T) {
 	if got := raw(second.Key("inference")); got != "[[regression]]" {
 		t.Errorf("the place of a key that is not written is %q", got)
 	}
-	for key, want := range map[string][]string{"response": {`"eelgrass"`}, "predictors": {`"nitrate"`, `"rain"`}} {
+	for name, want := range map[string][]string{"eelgrass": {`"eelgrass"`}, "nitrate": {`"nitrate"`}, "rain": {`"rain"`}} {
 		var got []string
-		for _, s := range second.Names[key] {
+		for _, s := range second.Names[name] {
 			got = append(got, raw(s))
 		}
 		if !reflect.DeepEqual(got, want) {
-			t.Errorf("names in %s: %q, want %q", key, got, want)
+			t.Errorf("places of %s: %q, want %q", name, got, want)
 		}
 	}
 	p := second.Keys["errors"]

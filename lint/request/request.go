@@ -133,7 +133,7 @@ type Asked struct {
 	Header document.Span // [[correlation]], brackets included
 	At     document.Span // header to the last statement, deviations included
 	Keys   map[string]Place
-	Names  map[string][]document.Span // where each series is named inside between, given, response, predictors
+	Names  map[string][]document.Span // by series: where it is named inside between, given, response, predictors
 	// Digest is over the fields that bear on the computing (not name,
 	// question, by, …): equal digests give equal evidence.
 	Digest [32]byte
@@ -189,6 +189,16 @@ func (r *Request) Columns() []Predictor {
 		all = append(all, Predictor{Series: name})
 	}
 	return all
+}
+
+// Whole reports whether the request names all that it takes to compute
+// anything: two series to correlate, or a response and a predictor. One that
+// is still being typed does not.
+func (r *Request) Whole() bool {
+	if r.Kind == Regression {
+		return r.Response != "" && len(r.Predictors) > 0
+	}
+	return len(r.Between) >= 2
 }
 
 // Pairs lists every pair of `between`, in its order.
