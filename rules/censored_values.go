@@ -25,15 +25,15 @@ var censoredValues = lint.Rule{
 
 func tellCensoredValues(q *lint.Inquiry) {
 	eachSeries(q, func(rec *request.Record, s *evidence.SeriesRead) {
-		if s.Censored == 0 || s.N == 0 {
+		if s.Censored == 0 {
 			return
 		}
-		share := 100 * float64(s.Censored) / float64(s.N)
+		share := 100 * float64(s.Censored) / float64(s.Measured)
 		q.Report(finding.Finding{
 			At:     seriesPlace(q, rec, s.Name, "detection-limit"),
 			Series: []string{s.Name},
 			Message: fmt.Sprintf("%d of %s of %s (%.0f %%) %s censored: known only to lie at or below a detection limit. %s",
-				s.Censored, count(s.N, "value", "values"), s.Name, share, agree(s.Censored, "is", "are"), censoredAdvice(s)),
+				s.Censored, count(s.Measured, "value", "values"), s.Name, share, agree(s.Censored, "is", "are"), censoredAdvice(s)),
 		})
 	})
 }
@@ -41,9 +41,9 @@ func tellCensoredValues(q *lint.Inquiry) {
 // censoredAdvice follows the shares of common practice; the page names them.
 func censoredAdvice(s *evidence.SeriesRead) string {
 	switch {
-	case 2*s.Censored > s.N:
+	case 2*s.Censored > s.Measured:
 		return "Most of the series is not measured: a rank coefficient can say little, any other nothing."
-	case 100*s.Censored > 15*s.N:
+	case 100*s.Censored > 15*s.Measured:
 		return "A rank coefficient (spearman, kendall) is the fair choice, and differences of censored values are fiction."
 	}
 	return "A rank coefficient (spearman, kendall) shows whether they matter."

@@ -31,7 +31,7 @@ func tellConstantSeries(q *lint.Inquiry) {
 	eachSeries(q, func(rec *request.Record, s *evidence.SeriesRead) {
 		var message string
 		switch {
-		case s.N == 0 && s.Unparsed == 0 && s.DeclaredSeries:
+		case s.N == 0 && s.Unparsed == 0 && s.Censored == 0 && s.DeclaredSeries:
 			message = fmt.Sprintf("%s has no value: %s missing.", s.Name, missingRows(s.Missing))
 		case s.N == 1:
 			message = fmt.Sprintf("%s has one value, %g: there is no variation to relate to anything.", s.Name, s.Value)

@@ -25,7 +25,7 @@ unit = "{count}"
 func read() evidence.Read {
 	return evidence.Read{Record: "moorings", File: "moorings.csv", Rows: 40, Columns: []string{"year", "boats_moored"},
 		Axis:   evidence.AxisSeen{Column: "year", Kind: "time", Declared: "P1Y", Step: "P1Y", Even: true, First: "1981", Last: "2020"},
-		Series: []evidence.SeriesRead{{Name: "boats", Column: "boats_moored", N: 40, Unit: "{count}", DeclaredSeries: true}}}
+		Series: []evidence.SeriesRead{{Name: "boats", Column: "boats_moored", N: 40, Measured: 40, Unit: "{count}", DeclaredSeries: true}}}
 }
 
 func inquiryOf(text string, r evidence.Read) lint.Inquiry {

@@ -37,9 +37,12 @@ func tellSuspectedMissingCode(q *lint.Inquiry) {
 				s.Suspect, times(s.SuspectCount), s.N, s.Name),
 		}
 		if table := tableAt(q.Tree, "record", rec.Name); table != nil {
-			code := fmt.Sprintf("%g", s.Suspect)
+			code, key, known := fmt.Sprintf("%g", s.Suspect), "missing", rec.Missing
+			if rec.MissingOnly != nil {
+				key, known = "missing-only", rec.MissingOnly
+			}
 			f.Rewrites = []finding.Rewrite{textRewrite(q.File, "Declare "+code+" as missing", false,
-				q.Tree.Set(table, "missing", codes(append(append([]string{}, rec.Missing...), code)))...)}
+				q.Tree.Set(table, key, codes(append(append([]string{}, known...), code)))...)}
 		}
 		q.Report(f)
 	})

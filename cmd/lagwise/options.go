@@ -7,6 +7,7 @@ import (
 	"io"
 	"path/filepath"
 	"slices"
+	"strconv"
 	"strings"
 	"time"
 
@@ -31,6 +32,7 @@ type options struct {
 	named       string
 	known       string
 	textOnly    bool
+	limits      dataset.Limits
 	paths       []string
 }
 
@@ -44,6 +46,7 @@ type flags struct {
 	also    list
 	holdAt  string
 	roots   list
+	limits  list
 }
 
 // list is an option that may be given several times.
@@ -59,6 +62,7 @@ func newFlags(command string, s streams, o *options, formats ...string) *flags {
 	f.Var(&f.also, "also", "FORMAT=FILE: write this form to a file too (repeatable)")
 	f.StringVar(&o.onDate, "on-date", time.Now().Format(time.DateOnly), "the day on which deviations are judged, YYYY-MM-DD")
 	f.Var(&f.roots, "data-root", "a folder outside the root that data may stand in (repeatable)")
+	f.Var(&f.limits, "limit", "NAME=N: raise a limit on data files, by the name that its message gives (repeatable)")
 	f.IntVar(&o.workers, "workers", 0, "how many computations run at a time (0: one a processor)")
 	f.StringVar(&o.conventions, "conventions", "", "this conventions file instead of those that are found")
 	f.BoolVar(&o.quiet, "quiet", false, "print nothing but what was asked for")
@@ -114,6 +118,22 @@ func (f *flags) check(o *options) error {
 		return &usageError{fmt.Sprintf("--workers takes 0 or more, not %d", o.workers)}
 	}
 	o.dataRoots = f.roots
+	return f.raise(o)
+}
+
+// raise takes in the limits that a person raised.
+func (f *flags) raise(o *options) error {
+	o.limits = dataset.DefaultLimits()
+	for _, l := range f.limits {
+		name, number, _ := strings.Cut(l, "=")
+		to, err := strconv.ParseInt(number, 10, 64)
+		if err == nil {
+			err = o.limits.Raise(name, to)
+		}
+		if err != nil {
+			return &usageError{fmt.Sprintf("--limit takes NAME=N, not %q: %v", l, err)}
+		}
+	}
 	return nil
 }
 
@@ -128,5 +148,5 @@ func (o *options) engine() (*engine.Engine, error) {
 		conventions = abs
 	}
 	return engine.New(engine.Options{Rules: rules.All(), Workers: o.workers, OnDate: o.onDate, DataRoots: o.dataRoots,
-		Conventions: conventions, Limits: dataset.DefaultLimits(), Version: version}), nil
+		Conventions: conventions, Limits: o.limits, Version: version}), nil
 }

@@ -27,6 +27,18 @@ func DefaultLimits() Limits {
 	}
 }
 
+// Raise sets one limit by the name that messages give it: file-bytes, cells,
+// columns, line-bytes, ratio. The error lists the names.
+func (l *Limits) Raise(name string, to int64) error {
+	limit, known := map[string]*int64{"file-bytes": &l.FileBytes, "cells": &l.Cells, "columns": &l.Columns,
+		"line-bytes": &l.LineBytes, "ratio": &l.Ratio}[name]
+	if !known || to < 1 {
+		return fmt.Errorf("a limit is file-bytes, cells, columns, line-bytes or ratio, and a number above 0; not %s=%d", name, to)
+	}
+	*limit = to
+	return nil
+}
+
 // reached is the trouble of a limit: which, how much there was, and how to
 // raise it.
 func reached(limit string, most, seen int64, unit string) *Trouble {

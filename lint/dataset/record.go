@@ -71,6 +71,7 @@ func readRecord(ctx context.Context, f io.Reader, size int64, rec *request.Recor
 	splitBy := t.splitBy(sampleText(b))
 	plan, trouble := t.prepare(rec, sample)
 	if trouble != nil {
+		trouble.SplitBy = splitBy
 		return nil, trouble
 	}
 	if trouble := t.grow(expectedRows(b, sample, size)); trouble != nil {

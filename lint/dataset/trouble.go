@@ -20,6 +20,7 @@ type Trouble struct {
 	Message string
 	Column  string // the column concerned, or empty
 	Nearest string // of unknown-column: the nearest name there is, or empty
+	SplitBy string // the delimiter by which the file looks split although another is used
 }
 
 func (t *Trouble) Error() string { return t.Message }

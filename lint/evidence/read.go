@@ -66,7 +66,8 @@ type SeriesRead struct {
 	Value          float64 // of a constant series
 	Suspect        float64 // a repeated extreme like -999 that is not declared
 	SuspectCount   int
-	Censored       int
+	Measured       int    // numbers and cells known to lie below a limit
+	Censored       int    // of these, known only to lie at or below a limit
 	HeaderUnit     string // unit found in the header, or empty
 	Unit           string // unit in force, or empty
 	DeclaredSeries bool   // stands in the manifest, not made from a header

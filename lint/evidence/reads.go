@@ -24,20 +24,20 @@ func (s *Store) Reads(ctx context.Context, m *request.Manifest, roots *dataset.R
 		case passing(err):
 			return all
 		default:
-			read.Trouble = troubleFrom(err)
+			read.Trouble, read.SplitBy = troubleFrom(err)
 		}
 		all = append(all, read)
 	}
 	return all
 }
 
-func troubleFrom(err error) *Trouble {
+func troubleFrom(err error) (trouble *Trouble, splitBy string) {
 	var t *dataset.Trouble
 	if errors.As(err, &t) {
-		trouble := troubleOf(t)
-		return &trouble
+		words := troubleOf(t)
+		return &words, t.SplitBy
 	}
-	return &Trouble{Kind: UnreadableRecord, Message: err.Error()}
+	return &Trouble{Kind: UnreadableRecord, Message: err.Error()}, ""
 }
 
 func (r *Read) fill(record *dataset.Record, rec *request.Record) {
@@ -61,6 +61,7 @@ func seriesRead(record *dataset.Record, decl *request.Series, rec *request.Recor
 	c := seen.Column
 	out.N, out.Missing, out.Unparsed, out.UnparsedLine, out.UnparsedText = c.N, c.Missing, c.Unparsed, c.UnparsedLine, c.UnparsedText
 	out.Constant, out.Value, out.Suspect, out.SuspectCount = seen.Constant, seen.Value, c.Suspect, c.SuspectCount
+	out.Measured = c.N + c.Censored
 	out.Censored, out.HeaderUnit, out.Unit = seen.Censored, c.HeaderUnit, seen.Unit
 	return out
 }
