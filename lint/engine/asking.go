@@ -22,6 +22,7 @@ type asking struct {
 	said                    // weighed, and answered by deviations
 	rewrites []finding.Rewrite
 	proofs   []*proof
+	reproven bool // the proofs are those of an earlier edition
 	complete bool
 	// computable is whether the text says which series to compute from what.
 	computable bool

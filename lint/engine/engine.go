@@ -41,8 +41,9 @@ type Engine struct {
 	outcomes   func(*evidence.Case) ([]*result.Outcome, error)
 
 	headers remembered[[]*request.Series]
-	spoken  remembered[spoken] // by text: what is known at once
-	heard   remembered[spoken] // by text and data: what need not be asked again
+	spoken  remembered[spoken]   // by text: what is known at once
+	heard   remembered[spoken]   // by text and data: what need not be asked again
+	proven  remembered[[]*proof] // by text and data: what need not be proven again
 }
 
 // New returns an engine.

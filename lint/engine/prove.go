@@ -46,6 +46,9 @@ func (h *hearing) proveAll(ctx context.Context) error {
 	}
 	var tasks []task
 	for _, a := range h.requests {
+		if a.reproven {
+			continue
+		}
 		for i := range a.proofs {
 			tasks = append(tasks, task{a, i})
 		}
@@ -53,6 +56,9 @@ func (h *hearing) proveAll(ctx context.Context) error {
 	err = h.ed.engine.each(ctx, len(tasks), func(i int) { tasks[i].a.prove(ctx, tasks[i].i) })
 	for _, a := range h.requests {
 		a.conclude()
+		if err == nil && ctx.Err() == nil {
+			a.keepProofs()
+		}
 	}
 	return err
 }
@@ -61,6 +67,11 @@ func (h *hearing) proveAll(ctx context.Context) error {
 // rewrite can answer and no deviation does.
 func (a *asking) propose() {
 	if !a.computable || a.mended() == finding.None && !a.asks() {
+		return
+	}
+	k, known := a.fullKey()
+	if before, ok := a.ed.engine.proven.get(k); known && ok {
+		a.reprove(before)
 		return
 	}
 	var candidates []procedure.Candidate
@@ -76,6 +87,19 @@ func (a *asking) propose() {
 		edits := request.Rewrite(a.file.tree(), a.asked, &c.Request)
 		if len(edits) > 0 {
 			a.proofs = append(a.proofs, &proof{Candidate: c, edits: edits})
+		}
+	}
+}
+
+// reprove takes over what was proven of the same text and data; only the edits
+// are made anew, because the request may have moved.
+func (a *asking) reprove(before []*proof) {
+	a.reproven = true
+	for _, p := range before {
+		again := *p
+		again.edits = request.Rewrite(a.file.tree(), a.asked, &p.Request)
+		if len(again.edits) > 0 {
+			a.proofs = append(a.proofs, &again)
 		}
 	}
 }

@@ -24,6 +24,17 @@ func (a *asking) conclude() {
 	}
 }
 
+// keepProofs remembers the proofs for the next edition; those of a request of
+// which something broke down are made again.
+func (a *asking) keepProofs() {
+	if !a.computable || a.reproven || len(a.broken) > 0 {
+		return
+	}
+	if k, known := a.fullKey(); known {
+		a.ed.engine.proven.put(k, a.proofs)
+	}
+}
+
 // preferred is the first clean proof; if none is clean, the first that lowers
 // the worst of what a rewrite can answer; nil when none does, or when nothing
 // asks for a rewrite. A rewrite that asks another question is never preferred.

@@ -127,13 +127,13 @@ func Sentence(c *result.Computed) string {
 	if o == nil || o.Error != "" || o.P == nil {
 		return "Nothing can be said on these data."
 	}
-	what := "the response and its first predictor"
+	what := safe(c.Response) + " and " + firstPredictor(o)
 	if c.Pair != nil {
 		what = safe(c.Pair[0]) + " and " + safe(c.Pair[1])
 	}
 	by := " (" + methodWords(o) + ")"
 	if *o.P < 1-o.Level {
-		words := fmt.Sprintf("%s are associated%s: %s, %s.", capital(what), by, result.P(*o.P, o.PBound), nWords(o))
+		words := fmt.Sprintf("%s are associated%s: %s, %s.", what, by, result.P(*o.P, o.PBound), nWords(o))
 		if c.Recommended == nil {
 			words = "As written, which the findings object to: " + words
 		}
@@ -146,10 +146,12 @@ func Sentence(c *result.Computed) string {
 	return words
 }
 
-func capital(s string) string {
-	if s == "" {
-		return s
+// firstPredictor names the first predictor of a regression.
+func firstPredictor(o *result.Outcome) string {
+	for _, c := range o.Coefficients {
+		if c.Role == "predictor" {
+			return safe(c.Of)
+		}
 	}
-	r := []rune(s)
-	return strings.ToUpper(string(r[0])) + string(r[1:])
+	return "its predictor"
 }

@@ -43,6 +43,7 @@ func Compare(c, recommended *evidence.Case) ([]Computed, error) {
 	for i := range all {
 		all[i] = Computed{File: c.Asked.File, Request: c.Asked.Name, Kind: c.Req().Kind.String(),
 			OnLevels: onLevels[i], AsWritten: written[i], Recommended: better[i], Changed: changed}
+		all[i].Response = c.Req().Response
 		if c.Req().Kind == request.Correlation {
 			all[i].Pair = &pairs[i]
 		}

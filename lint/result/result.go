@@ -17,6 +17,7 @@ type Computed struct {
 	Request     string
 	Kind        string     // correlation, regression
 	Pair        *[2]string // nil for a regression
+	Response    string     // of a regression
 	OnLevels    *Outcome
 	AsWritten   *Outcome
 	Recommended *Outcome // nil: no rewrite is preferred
