@@ -123,6 +123,10 @@ func families() []family {
 		{"season + AR(1) 0.6", false, 12, each(plus(ar(0.6), cycle(3)))},
 		{"season + walk", true, 12, each(plus(walk, cycle(6)))},
 		{"season + trend", true, 12, each(plus(plus(ar(0.3), slope(0.1)), cycle(3)))},
+		{"stochastic season", true, 12, each(changingSeason)},
+		{"variance doubling", false, 0, each(spreading)},
+		{"level break", true, 0, each(plus(ar(0.3), halfway(3)))},
+		{"counts", false, 0, each(counted)},
 	}
 }
 
@@ -134,4 +138,51 @@ func unlike(first, second func(*rand.Rand, []float64) []float64) func(*rand.Rand
 		x, y = first(r, ex), second(r, ey)
 		return x[burn:], y[burn:], ex[burn:], ey[burn:]
 	}
+}
+
+// changingSeason has a season whose twelve places walk by themselves.
+func changingSeason(r *rand.Rand, e []float64) []float64 {
+	x := make([]float64, len(e))
+	for t := range e {
+		x[t] = e[t]
+		if t >= 12 {
+			x[t] += x[t-12]
+		}
+	}
+	return x
+}
+
+// spreading is white noise whose variance doubles halfway.
+func spreading(_ *rand.Rand, e []float64) []float64 {
+	x := make([]float64, len(e))
+	half := (len(e) + 200) / 2 // of the rows after the burn-in
+	for t := range e {
+		x[t] = e[t]
+		if t >= half {
+			x[t] *= math.Sqrt2
+		}
+	}
+	return x
+}
+
+// halfway is a step of that height in the middle of the rows, up or down.
+func halfway(height float64) func(*rand.Rand, int) func(int) float64 {
+	return func(r *rand.Rand, n int) func(int) float64 {
+		sign := float64(2*r.IntN(2) - 1)
+		return func(t int) float64 {
+			if t >= (n+200)/2 {
+				return sign * height
+			}
+			return 0
+		}
+	}
+}
+
+// counted are small counts with a mean of about two.
+func counted(_ *rand.Rand, e []float64) []float64 {
+	x := make([]float64, len(e))
+	for t := range e {
+		x[t] = math.Floor(math.Exp(0.6 + 0.5*e[t]))
+	}
+	return x
 }

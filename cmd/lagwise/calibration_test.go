@@ -7,10 +7,12 @@ import (
 	"flag"
 	"fmt"
 	"io"
+	"maps"
 	"math"
 	"math/rand/v2"
 	"os"
 	"path/filepath"
+	"slices"
 	"strconv"
 	"strings"
 	"testing"
@@ -22,15 +24,29 @@ var (
 	calibrationPairs = flag.Int("pairs", 200, "pairs of series a cell of the calibration")
 	calibrationRows  = flag.Int("rows", 100, "rows of a series (the seasonal families take a fifth more)")
 	calibrationOnly  = flag.String("only", "", "only families whose name holds this")
+	calibrationAsks  = flag.Int("asks", 2, "how many of the kinds of request: 2 are correlation and regression, 7 all")
 )
 
-// kinds of request that the calibration asks.
-var kinds = []string{"correlation", "regression"}
+// asks are the kinds of request that the calibration asks: how each is written
+// for the pair number i, and whether a third series stands beside it.
+var asks = []struct {
+	name    string
+	control func(*rand.Rand, []float64) []float64 // nil: no third series
+	text    string
+}{
+	{"correlation", nil, "[[correlation]]\nname = \"p%[1]d\"\naim = \"association\"\nbetween = [\"a%[1]d\", \"b%[1]d\"]\n\n"},
+	{"regression", nil, "[[regression]]\nname = \"p%[1]d\"\naim = \"effect\"\nresponse = \"a%[1]d\"\npredictors = [\"b%[1]d\"]\n\n"},
+	{"spearman", nil, "[[correlation]]\nname = \"p%[1]d\"\naim = \"association\"\nbetween = [\"a%[1]d\", \"b%[1]d\"]\ncoefficient = \"spearman\"\n\n"},
+	{"kendall", nil, "[[correlation]]\nname = \"p%[1]d\"\naim = \"association\"\nbetween = [\"a%[1]d\", \"b%[1]d\"]\ncoefficient = \"kendall\"\n\n"},
+	{"partial, white", autoregression(0), "[[correlation]]\nname = \"p%[1]d\"\naim = \"association\"\nbetween = [\"a%[1]d\", \"b%[1]d\"]\ngiven = [\"c%[1]d\"]\n\n"},
+	{"partial, AR 0.8", autoregression(0.8), "[[correlation]]\nname = \"p%[1]d\"\naim = \"association\"\nbetween = [\"a%[1]d\", \"b%[1]d\"]\ngiven = [\"c%[1]d\"]\n\n"},
+	{"two predictors", autoregression(0.8), "[[regression]]\nname = \"p%[1]d\"\naim = \"effect\"\nresponse = \"a%[1]d\"\npredictors = [\"b%[1]d\", \"c%[1]d\"]\n\n"},
+}
 
 // cell is one cell of the table: a family, a kind of request, related or not.
 type cell struct {
 	family
-	kind string
+	kind int // of asks
 	rho  float64
 }
 
@@ -49,16 +65,16 @@ type outcome struct {
 //	go test ./cmd/lagwise -run '^$' -bench Calibration -benchtime 1x -pairs 1000
 func BenchmarkCalibration(b *testing.B) {
 	for b.Loop() {
-		fmt.Printf("\n%d pairs a cell, %d rows\n%-28s %-12s %8s %8s %8s %8s %6s  %s\n", *calibrationPairs, *calibrationRows,
+		fmt.Printf("\n%d pairs a cell, %d rows\n%-28s %-16s %8s %8s %8s %8s %6s  %s\n", *calibrationPairs, *calibrationRows,
 			"family", "request", "flagged", "size", "power", "oracle", "ratio", "chosen for unrelated pairs")
 		for _, f := range families() {
 			if !strings.Contains(f.name, *calibrationOnly) {
 				continue
 			}
-			for _, kind := range kinds {
+			for kind := range min(*calibrationAsks, len(asks)) {
 				unrelated := measure(b, cell{f, kind, 0})
 				related := measure(b, cell{f, kind, 0.4})
-				fmt.Printf("%-28s %-12s %8.3f %8.3f %8.3f %8.3f %6.2f  %s\n", f.name, kind, unrelated.flagged, unrelated.rejected,
+				fmt.Printf("%-28s %-16s %8.3f %8.3f %8.3f %8.3f %6.2f  %s\n", f.name, asks[kind].name, unrelated.flagged, unrelated.rejected,
 					related.rejected, related.oracle, related.rejected/related.oracle, mostChosen(unrelated.chosen))
 			}
 		}
@@ -151,22 +167,22 @@ func writeLab(b testing.TB, dir string, c cell) float64 {
 	if c.season > 0 {
 		rows = rows * 6 / 5
 	}
-	seed := rand.NewPCG(uint64(len(c.name))*7919+uint64(c.rho*1000), uint64(len(c.kind))+uint64(c.name[0])<<8+uint64(c.name[len(c.name)-1])<<16)
+	seed := rand.NewPCG(uint64(len(c.name))*7919+uint64(c.rho*1000), uint64(c.kind)+uint64(c.name[0])<<8+uint64(c.name[len(c.name)-1])<<16)
 	r := rand.New(seed)
 	pairs := *calibrationPairs
-	columns := make([][]float64, 0, 2*pairs)
+	columns := map[byte][][]float64{}
 	hits := 0.0
 	var analysis strings.Builder
 	for i := range pairs {
 		x, y, ex, ey := c.make(r, rows, c.rho)
-		columns = append(columns, x, y)
+		columns['a'], columns['b'] = append(columns['a'], x), append(columns['b'], y)
+		if control := asks[c.kind].control; control != nil {
+			e, _ := innovations(r, rows, 0)
+			columns['c'] = append(columns['c'], control(r, e))
+		}
+		fmt.Fprintf(&analysis, asks[c.kind].text, i)
 		if got, err := association.Pearson(ex, ey, []int{rows}, association.Inference{Level: 0.95}); err == nil && got.P < 0.05 {
 			hits++
-		}
-		if c.kind == "correlation" {
-			fmt.Fprintf(&analysis, "[[correlation]]\nname = \"p%d\"\naim = \"association\"\nbetween = [\"a%d\", \"b%d\"]\n\n", i, i, i)
-		} else {
-			fmt.Fprintf(&analysis, "[[regression]]\nname = \"p%d\"\naim = \"effect\"\nresponse = \"a%d\"\npredictors = [\"b%d\"]\n\n", i, i, i)
 		}
 	}
 	writeAll(b, filepath.Join(dir, "pairs.analysis.toml"), analysis.String())
@@ -186,11 +202,14 @@ func writeAll(b testing.TB, path, text string) {
 	}
 }
 
-func table(columns [][]float64, rows int, monthly bool) string {
+func table(columns map[byte][][]float64, rows int, monthly bool) string {
 	var t strings.Builder
 	t.WriteString("time")
-	for i := range columns {
-		fmt.Fprintf(&t, ",%c%d", 'a'+i%2, i/2)
+	letters := slices.Sorted(maps.Keys(columns))
+	for _, letter := range letters {
+		for i := range columns[letter] {
+			fmt.Fprintf(&t, ",%c%d", letter, i)
+		}
 	}
 	for row := range rows {
 		if monthly {
@@ -198,9 +217,11 @@ func table(columns [][]float64, rows int, monthly bool) string {
 		} else {
 			fmt.Fprintf(&t, "\n%d", 1900+row)
 		}
-		for _, c := range columns {
-			t.WriteByte(',')
-			t.WriteString(strconv.FormatFloat(math.Round(c[row]*1e6)/1e6, 'f', -1, 64))
+		for _, letter := range letters {
+			for _, c := range columns[letter] {
+				t.WriteByte(',')
+				t.WriteString(strconv.FormatFloat(math.Round(c[row]*1e6)/1e6, 'f', -1, 64))
+			}
 		}
 	}
 	t.WriteByte('\n')
