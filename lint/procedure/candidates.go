@@ -142,7 +142,9 @@ func join(head []request.Transform, names ...string) []request.Transform {
 //  3. a level: GLS of the smallest order that whitens
 //
 // and after 2 and 3 least squares on first differences, after 1 GLS as it
-// stands, so that both are always among what is offered.
+// stands, so that both are always among what is offered. Where nothing drifts,
+// least squares on the levels with effective-n comes last: no order may whiten
+// the errors, and differencing may be once too often.
 func (f Facts) regressions() []Candidate {
 	differences := f.regressDifferences()
 	gls := f.generalized()
@@ -154,7 +156,21 @@ func (f Facts) regressions() []Candidate {
 		leastSquares(&kept, "effective-n")
 		return append([]Candidate{gls, {Request: kept, Title: title(kept)}}, differences...)
 	}
-	return append([]Candidate{gls}, differences...)
+	all := append([]Candidate{gls}, differences...)
+	if !f.drifts() {
+		all = append(all, f.countedLevels())
+	}
+	return all
+}
+
+// countedLevels is least squares on the levels, with seasonal terms where the
+// season is fixed, and standard errors that count how many values there are.
+func (f Facts) countedLevels() Candidate {
+	r := f.Request
+	r.On, _ = evidence.SplitOn(r.On)
+	r.SeasonalTerms = r.SeasonalTerms || f.Season == FixedSeason
+	leastSquares(&r, "effective-n")
+	return Candidate{Request: r, Title: title(r)}
 }
 
 func (f Facts) regressDifferences() []Candidate {

@@ -88,9 +88,9 @@ func TestOrderOfCandidates(t *testing.T) {
 		{"regression around lines", facts(regression(), tr, st),
 			[]string{"levels gls ar(1) usual trend", "first-differences ols independent effective-n"}},
 		{"regression of levels", with(facts(regression(), st, st), func(f *Facts) { f.Whitens = func(request.Request) int { return 2 } }),
-			[]string{"levels gls ar(2) usual", "first-differences ols independent effective-n"}},
+			[]string{"levels gls ar(2) usual", "first-differences ols independent effective-n", "levels ols independent effective-n"}},
 		{"regression with a fixed season", with(facts(regression(), st, st), func(f *Facts) { f.Season = FixedSeason }),
-			[]string{"levels gls ar(1) usual season", "[first-differences, anomalies] ols independent effective-n"}},
+			[]string{"levels gls ar(1) usual season", "[first-differences, anomalies] ols independent effective-n", "levels ols independent effective-n season"}},
 	} {
 		var got []string
 		for _, c := range Propose(row.facts) {
