@@ -23,6 +23,7 @@ type Frame struct {
 	Until     string // last position
 	Lost      int    // positions with a value that are not shared by all series
 	Digest    [32]byte
+	Orders    []int // of the autoregression that prewhitened took off each column, when it came last
 	Removed   int   // terms that transforms have taken off: seasonal means, lines
 	Filled    int   // values made by interpolation, which was asked for
 	Group     []int // group of each row; nil when there is one

@@ -83,6 +83,7 @@ func (f *Frame) with(i int, values []float64) *Frame {
 
 func (f *Frame) transformAll(step request.Transform, shapes []Shape) (*Frame, error) {
 	columns := make([][]float64, len(f.Columns))
+	var orders []int
 	removed := 0
 	for i := range f.Columns {
 		shape := Shape{}
@@ -96,8 +97,25 @@ func (f *Frame) transformAll(step request.Transform, shapes []Shape) (*Frame, er
 		}
 		columns[i] = values
 		removed = max(removed, n)
+		if step.Name == request.Prewhitened {
+			orders = append(orders, p.lost(values))
+		}
 	}
-	return f.keep(columns, removed)
+	out, err := f.keep(columns, removed)
+	if err == nil {
+		out.Orders = orders
+	}
+	return out, err
+}
+
+// lost is how many rows the start of each run lost to the order of an
+// autoregression.
+func (p part) lost(values []float64) int {
+	order := 0
+	for order < len(values) && values[order] != values[order] {
+		order++
+	}
+	return order
 }
 
 // keep returns the rows that no column has lost.

@@ -48,6 +48,7 @@ type column struct {
 	at     []int // whole-step positions
 	runs   []int // end of each stretch without a gap
 	season int   // steps, 0 none
+	fitted int   // order of the autoregression that was taken off
 	around bool  // the fitted line was taken off
 	digest key   // of all of the above but around
 }
@@ -82,8 +83,8 @@ func newProfile(ctx context.Context, c column, set Settings) *Profile {
 		return p
 	}
 	p.R, _ = series.Autocorrelations(runs, min(2, max(0, p.N-1)))
-	if lags := min(10, p.N/5); lags >= 1 {
-		if lb, err := series.LjungBox(runs, lags, 0); err == nil {
+	if lags := max(min(10, p.N/5), c.fitted+1); lags >= 1 && lags < p.N {
+		if lb, err := series.LjungBox(runs, lags, c.fitted); err == nil {
 			p.LjungBox = &lb
 			p.Autocorrelated = lb.P < set.Alpha
 		}
