@@ -41,6 +41,7 @@ func Propose(f Facts) []Candidate {
 //  1. the differencing that the request already has, with effective-n
 //  2. first differences (rates of change when uneven; with the season taken
 //     off first when it is fixed, differenced when it is stochastic)
+//     and, in case the season proves to change all the same, with it differenced
 //  3. the second differences where the first still walk
 //  4. prewhitened, when every series holds a level or a line
 //  5. levels or detrended with effective-n, for the same
@@ -53,6 +54,9 @@ func (f Facts) correlations() []Candidate {
 	}
 	if f.walks() || f.drifts() || f.Autocorrelated || f.Season != NoSeason || evidence.Differences(tail) {
 		all = append(all, f.correlate(f.differenced(), "effective-n"))
+		if f.Season == FixedSeason {
+			all = append(all, f.correlate(f.seasonallyDifferenced(), "effective-n"))
+		}
 	}
 	if f.Walking {
 		all = append(all, f.correlate(twice(f.differenced()), "effective-n"))
@@ -112,9 +116,16 @@ func (f Facts) differenced() []request.Transform {
 	case FixedSeason:
 		return join(head, step, request.Anomalies)
 	case StochasticSeason:
-		return join(head, request.SeasonalDifferences, step)
+		return f.seasonallyDifferenced()
 	}
 	return join(head, step)
+}
+
+// seasonallyDifferenced is the differencing for a season that changes over
+// time: of the values one season apart, then along the axis.
+func (f Facts) seasonallyDifferenced() []request.Transform {
+	head, _ := evidence.SplitOn(f.Request.On)
+	return join(head, request.SeasonalDifferences, request.FirstDifferences)
 }
 
 // twice differences once more, before a season is taken off.
@@ -178,6 +189,11 @@ func (f Facts) regressDifferences() []Candidate {
 	r.On, r.Trend, r.SeasonalTerms = f.differenced(), false, false
 	leastSquares(&r, "effective-n")
 	all := []Candidate{{Request: r, Title: title(r)}}
+	if f.Season == FixedSeason {
+		changing := r
+		changing.On = f.seasonallyDifferenced()
+		all = append(all, Candidate{Request: changing, Title: title(changing)})
+	}
 	if f.Walking {
 		second := r
 		second.On = twice(r.On)

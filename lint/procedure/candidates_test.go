@@ -71,7 +71,7 @@ func TestOrderOfCandidates(t *testing.T) {
 		{"both hold a level, autocorrelated", with(facts(correlation(), st, st), func(f *Facts) { f.Autocorrelated = true }),
 			[]string{"first-differences effective-n", "prewhitened usual", "levels effective-n"}},
 		{"uneven", with(facts(correlation(), ds, ds), func(f *Facts) { f.Even = false }), []string{"rates-of-change effective-n"}},
-		{"fixed season", with(facts(correlation(), ds, ds), func(f *Facts) { f.Season = FixedSeason }), []string{"[first-differences, anomalies] effective-n"}},
+		{"fixed season", with(facts(correlation(), ds, ds), func(f *Facts) { f.Season = FixedSeason }), []string{"[first-differences, anomalies] effective-n", "[seasonal-differences, first-differences] effective-n"}},
 		{"stochastic season", with(facts(correlation(), ds, ds), func(f *Facts) { f.Season = StochasticSeason }),
 			[]string{"[seasonal-differences, first-differences] effective-n"}},
 		{"twice integrated", with(facts(correlation(), ds, ds), func(f *Facts) { f.Walking = true }),
@@ -90,7 +90,8 @@ func TestOrderOfCandidates(t *testing.T) {
 		{"regression of levels", with(facts(regression(), st, st), func(f *Facts) { f.Whitens = func(request.Request) int { return 2 } }),
 			[]string{"levels gls ar(2) usual", "first-differences ols independent effective-n", "levels ols independent effective-n"}},
 		{"regression with a fixed season", with(facts(regression(), st, st), func(f *Facts) { f.Season = FixedSeason }),
-			[]string{"levels gls ar(1) usual season", "[first-differences, anomalies] ols independent effective-n", "levels ols independent effective-n season"}},
+			[]string{"levels gls ar(1) usual season", "[first-differences, anomalies] ols independent effective-n",
+				"[seasonal-differences, first-differences] ols independent effective-n", "levels ols independent effective-n season"}},
 	} {
 		var got []string
 		for _, c := range Propose(row.facts) {
