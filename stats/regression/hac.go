@@ -7,6 +7,7 @@ import (
 	"gonum.org/v1/gonum/floats"
 
 	"lagwise/stats"
+	"lagwise/stats/series"
 )
 
 // scores are q[t] e[t] for each column q of the basis: their long-run
@@ -43,13 +44,14 @@ func (f *Fit) WithCosineHAC(d Design, level float64) (*Fit, error) {
 	n := float64(f.N)
 	omega := f.basis.spherical(0)
 	scores := f.scores()
-	wave, l := make([]float64, f.N), make([]float64, f.K)
-	for j := 1; j <= nu; j++ {
-		for t := range wave {
-			wave[t] = math.Cos(math.Pi * float64(j) * (float64(t) + 0.5) / n)
-		}
-		for i, s := range scores {
-			l[i] = floats.Dot(wave, s)
+	sums := make([][]float64, f.K)
+	for i, s := range scores {
+		sums[i] = series.CosineSums(s, nu)
+	}
+	l := make([]float64, f.K)
+	for j := range nu {
+		for i := range l {
+			l[i] = sums[i][j]
 		}
 		addOuter(omega, l, l, 2/(n-float64(f.K+d.Removed))*n/float64(nu))
 	}

@@ -144,22 +144,51 @@ func (a *autoregression) order() (int, error) {
 	n := float64(len(a.x))
 	top := max(2, int(math.Floor(4*math.Pow(n/100, 0.25))))
 	for ; top > 0; top-- {
+		if r := a.gramTriangle(top); r != nil {
+			return bestOrder(r, len(a.x)-top, 1), nil
+		}
 		e := a.equation(top)
 		// Two rows beside the coefficients and AICc's own n - k - 1.
 		if len(e.rows)-e.removed-top-2 >= 2 {
-			return a.bestOrder(e, top), nil
+			return bestOrder(triangle(e.columns), len(e.rows), e.removed), nil
 		}
 	}
 	return 0, nil
 }
 
-func (a *autoregression) bestOrder(e equation, top int) int {
-	r := triangle(e.columns)
-	n := float64(len(e.rows))
+// manyRows is from where cross products pay: below, the decomposition of the
+// rows themselves is as fast and keeps more digits.
+const manyRows = 2000
+
+// gramTriangle is the triangle by cross products, nil where these do not
+// serve: short series, gaps, a trend or a season, lags that are nearly
+// dependent.
+func (a *autoregression) gramTriangle(p int) *mat.Dense {
+	n := len(a.x)
+	if n < manyRows || a.trend || a.s > 1 || a.before[n-1] != n-1 {
+		return nil
+	}
+	r := factor(lagGram(a.x, p))
+	if r == nil {
+		return nil
+	}
+	out := mat.NewDense(p+1, p+1, nil)
+	for i, row := range r {
+		out.SetRow(i, row)
+	}
+	return out
+}
+
+// bestOrder is the order of least AICc: the last column of the triangle holds
+// the residual sums of squares of all orders at once.
+func bestOrder(r *mat.Dense, rows, removed int) int {
+	_, width := r.Dims()
+	top := width - 1
+	n := float64(rows)
 	rss := r.At(top, top) * r.At(top, top)
 	best, least := top, math.Inf(1)
 	for p := top; p >= 0; p-- {
-		k := float64(e.removed + p + 1)
+		k := float64(removed + p + 1)
 		aicc := n*math.Log(rss/n) + 2*k + 2*k*(k+1)/(n-k-1)
 		if aicc <= least {
 			best, least = p, aicc
@@ -182,7 +211,11 @@ func (a *autoregression) fit(p int) (ARFit, error) {
 	beta := make([]float64, p)
 	if p > 0 {
 		var err error
-		if beta, err = backSubstitute(triangle(e.columns), p); err != nil {
+		r := a.gramTriangle(p)
+		if r == nil {
+			r = triangle(e.columns)
+		}
+		if beta, err = backSubstitute(r, p); err != nil {
 			return ARFit{}, err
 		}
 	}

@@ -73,18 +73,6 @@ func LinearCosine(x []float64, at []float64) (Slope, error) {
 
 // cosineVariance is the mean of the first nu squared cosine coefficients of v.
 func cosineVariance(v []float64, nu int) float64 {
-	n := float64(len(v))
-	total := 0.0
-	for j := 1; j <= nu; j++ {
-		// cos(a + h), cos(a + 3h), .. by rotation: no cosine for each value.
-		sin, cos := math.Sincos(math.Pi * float64(j) / n / 2)
-		turnSin, turnCos := math.Sincos(math.Pi * float64(j) / n)
-		sum := 0.0
-		for _, x := range v {
-			sum += cos * x
-			cos, sin = cos*turnCos-sin*turnSin, sin*turnCos+cos*turnSin
-		}
-		total += 2 / n * sum * sum
-	}
-	return total / float64(nu)
+	sums := series.CosineSums(v, nu)
+	return 2 / float64(len(v)) * floats.Dot(sums, sums) / float64(nu)
 }
