@@ -78,15 +78,20 @@ func cycle(amplitude float64) func(*rand.Rand, int) func(int) float64 {
 }
 
 // localLevel is a walk with innovations of sd 0.3 measured with noise of sd 1;
-// the noise is what the pair shares when it is related.
-func localLevel(r *rand.Rand, e []float64) []float64 {
-	x := make([]float64, len(e))
-	level := 0.0
-	for t := range e {
-		level += 0.3 * r.NormFloat64()
-		x[t] = level + e[t]
+// a related pair shares both, the walk's innovations and the noise.
+func localLevel(r *rand.Rand, n int, rho float64) (x, y, ex, ey []float64) {
+	wx, wy := innovations(r, n, rho)
+	ex, ey = innovations(r, n, rho)
+	measured := func(w, e []float64) []float64 {
+		x := make([]float64, n)
+		level := 0.0
+		for t := range e {
+			level += 0.3 * w[t]
+			x[t] = level + e[t]
+		}
+		return x
 	}
-	return x
+	return measured(wx, ex), measured(wy, ey), ex, ey
 }
 
 func movingAverage(theta float64) func(*rand.Rand, []float64) []float64 {
@@ -117,7 +122,7 @@ func families() []family {
 		{"AR(1) 0.6 and -0.5", false, 0, unlike(ar(0.6), ar(-0.5))},
 		{"MA(1) -0.6", false, 0, each(movingAverage(-0.6))},
 		{"white", false, 0, each(ar(0))},
-		{"local level", true, 0, each(localLevel)},
+		{"local level", true, 0, localLevel},
 		{"walk and AR(1) 0.6", true, 0, unlike(walk, ar(0.6))},
 		{"season + white", false, 12, each(plus(ar(0), cycle(3)))},
 		{"season + AR(1) 0.6", false, 12, each(plus(ar(0.6), cycle(3)))},
