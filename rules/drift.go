@@ -97,11 +97,11 @@ func pairWords(pairs [][2]string) string {
 }
 
 // coefficient writes the coefficient of a pair as the request has it: r =
-// -0.93; empty when it cannot be computed.
+// -0.93; in words when it cannot be computed.
 func coefficient(q *lint.Inquiry, pair [2]int) string {
 	r, err := q.Case.Pair(pair[0], pair[1])
 	if err != nil {
-		return ""
+		return "the coefficient"
 	}
 	return symbolOf(q.Case.Req()) + " = " + result.Coef(r.Estimate)
 }

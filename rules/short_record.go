@@ -46,7 +46,7 @@ func reportTooShort(q *lint.Inquiry, message string) {
 // shortCorrelation speaks once: of the pairs that cannot be judged, else of
 // the rows.
 func shortCorrelation(q *lint.Inquiry, rows int) {
-	least := q.Case.Settings.LeastN["correlation"]
+	least := max(q.Case.Settings.LeastN["correlation"], leastSeasons(q))
 	var lowest float64
 	pairs, columns := pairsWith(q, func(i, j int) bool {
 		r, err := q.Case.Pair(i, j)
@@ -90,6 +90,15 @@ func fewWords(n float64) string {
 	return result.Count(n) + " independent ones"
 }
 
+// leastSeasons is how many values four full seasons hold, 0 without a season.
+func leastSeasons(q *lint.Inquiry) int {
+	frame, err := q.Case.Used()
+	if err != nil {
+		return 0
+	}
+	return 4 * frame.Season
+}
+
 // leastForEach is how many values each estimated coefficient asks for.
 const leastForEach = 10
 
@@ -101,11 +110,11 @@ func shortRegression(q *lint.Inquiry, rows int) {
 		}
 		return
 	}
-	estimated := len(fit.Terms) - 1
+	estimated := len(fit.Terms)
 	if fit.GLS != nil {
 		estimated += fit.GLS.Order
 	}
-	least := max(q.Case.Settings.LeastN["regression"], leastForEach*estimated)
+	least := max(q.Case.Settings.LeastN["regression"], leastForEach*estimated, leastSeasons(q))
 	if rows >= least {
 		return
 	}

@@ -28,16 +28,11 @@ func compute(ctx context.Context, s streams, args []string) (int, error) {
 	if err != nil {
 		return exitFailed, err
 	}
-	err = o.write(s, func(w io.Writer, format string) error {
-		switch format {
-		case "json":
-			return present.ComputeJSON(w, b.head(), all)
-		case "csv":
-			return present.ComputeCSV(w, all)
-		case "markdown":
-			return present.ComputeMarkdown(w, all)
-		}
-		return present.ComputeText(w, all)
+	err = o.write(s, forms{
+		"text":     func(w io.Writer) error { return present.ComputeText(w, all) },
+		"json":     func(w io.Writer) error { return present.ComputeJSON(w, b.head(), all) },
+		"csv":      func(w io.Writer) error { return present.ComputeCSV(w, all) },
+		"markdown": func(w io.Writer) error { return present.ComputeMarkdown(w, all) },
 	})
 	if b.trouble != nil {
 		return exitFailed, b.trouble

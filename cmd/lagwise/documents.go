@@ -114,13 +114,16 @@ func shown(path string) string {
 	return filepath.ToSlash(rel)
 }
 
-// write sends each form of the output where it belongs.
-func (o *options) write(s streams, write func(w io.Writer, format string) error) error {
-	if err := write(s.out, o.as); err != nil {
+// forms are the forms that a command writes, by name.
+type forms map[string]func(io.Writer) error
+
+// write sends each form that is asked for where it belongs.
+func (o *options) write(s streams, all forms) error {
+	if err := all[o.as](s.out); err != nil {
 		return err
 	}
 	for _, a := range o.also {
-		if err := writeFile(a.file, func(w io.Writer) error { return write(w, a.format) }); err != nil {
+		if err := writeFile(a.file, all[a.format]); err != nil {
 			return err
 		}
 	}

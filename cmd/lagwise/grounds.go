@@ -35,10 +35,8 @@ func grounds(_ context.Context, s streams, args []string) (int, error) {
 			return exitFailed, fmt.Errorf("there is no rule or term %q; lagwise grounds lists them", word)
 		}
 	}
-	return exitFine, o.write(s, func(w io.Writer, format string) error {
-		if format == "json" {
-			return present.GroundsJSON(w, present.NewHead(version, "", o.onDate), g)
-		}
-		return present.GroundsText(w, g, len(o.paths) == 1)
+	return exitFine, o.write(s, forms{
+		"text": func(w io.Writer) error { return present.GroundsText(w, g, len(o.paths) == 1) },
+		"json": func(w io.Writer) error { return present.GroundsJSON(w, present.NewHead(version, "", o.onDate), g) },
 	})
 }

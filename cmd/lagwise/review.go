@@ -35,11 +35,9 @@ func review(ctx context.Context, s streams, args []string) (int, error) {
 	if err != nil {
 		return exitFailed, err
 	}
-	err = o.write(s, func(w io.Writer, format string) error {
-		if format == "json" {
-			return present.ReviewJSON(w, b.head(), all)
-		}
-		return present.ReviewText(w, all)
+	err = o.write(s, forms{
+		"text": func(w io.Writer) error { return present.ReviewText(w, all) },
+		"json": func(w io.Writer) error { return present.ReviewJSON(w, b.head(), all) },
 	})
 	if b.trouble != nil {
 		return exitFailed, b.trouble

@@ -48,16 +48,11 @@ func screen(ctx context.Context, s streams, args []string) (int, error) {
 	if err != nil {
 		return exitFailed, err
 	}
-	err = o.write(s, func(w io.Writer, format string) error {
-		switch format {
-		case "json":
-			return present.ScreenJSON(w, b.head(), all)
-		case "csv":
-			return present.ScreenCSV(w, all)
-		case "markdown":
-			return present.ScreenMarkdown(w, all)
-		}
-		return present.ScreenText(w, all)
+	err = o.write(s, forms{
+		"text":     func(w io.Writer) error { return present.ScreenText(w, all) },
+		"json":     func(w io.Writer) error { return present.ScreenJSON(w, b.head(), all) },
+		"csv":      func(w io.Writer) error { return present.ScreenCSV(w, all) },
+		"markdown": func(w io.Writer) error { return present.ScreenMarkdown(w, all) },
 	})
 	if b.trouble != nil {
 		return exitFailed, b.trouble

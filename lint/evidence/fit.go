@@ -161,12 +161,15 @@ func runsOf(x []float64, ends []int) series.Runs {
 	return column{values: x, runs: ends}.stretches()
 }
 
-// Persistence is the parameter of the errors of a GLS that tells how near
-// they are to a unit root, with its profile interval: the parameter of AR(1),
-// the lag-1 autocorrelation parameter of a higher order.
+// Persistence is the partial autocorrelation of the errors of a GLS that tells
+// how near they are to a unit root, with its profile interval: the one whose
+// interval reaches highest. For AR(1) it is the parameter itself.
 func (f *Fit) Persistence() (value float64, interval [2]float64) {
-	if len(f.GLS.AR) == 0 || len(f.GLS.Intervals) == 0 {
-		return 0, [2]float64{-1, 1}
+	interval[1] = -1
+	for k, i := range f.GLS.Intervals {
+		if i[1] > interval[1] {
+			value, interval = f.GLS.Partial[k], i
+		}
 	}
-	return f.GLS.AR[0], f.GLS.Intervals[0]
+	return value, interval
 }

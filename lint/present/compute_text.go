@@ -132,7 +132,7 @@ func Sentence(c *result.Computed) string {
 		what = safe(c.Pair[0]) + " and " + safe(c.Pair[1])
 	}
 	by := " (" + methodWords(o) + ")"
-	if *o.P < 1-o.Level {
+	if *o.P < o.Alpha {
 		words := fmt.Sprintf("%s are associated%s: %s, %s.", what, by, result.P(*o.P, o.PBound), nWords(o))
 		if c.Recommended == nil {
 			words = "As written, which the findings object to: " + words

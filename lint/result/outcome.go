@@ -32,7 +32,7 @@ func Outcomes(c *evidence.Case) ([]*Outcome, error) {
 // heading is what every outcome holds of its request and rows.
 func heading(c *evidence.Case) (*Outcome, *dataset.Frame, error) {
 	r := c.Req()
-	o := &Outcome{On: onNames(r.On), Lag: r.Lag, Level: level}
+	o := &Outcome{On: onNames(r.On), Lag: r.Lag, Level: level, Alpha: c.Settings.Alpha}
 	frame, err := c.Used()
 	if err != nil {
 		o.Error = Words(err)

@@ -40,6 +40,7 @@ type Outcome struct {
 	P           *float64
 	PBound      Bound
 	Level       float64 // of the interval, 0.95
+	Alpha       float64 // of the lab: a p below it is evidence
 	From, Until string  // first and last position used, as the axis writes them
 	Data        string  // sha256:… of the aligned values
 	Detectable  *float64
